@@ -255,9 +255,13 @@ describe('remembered offsets agree with luxon', () => {
           ]);
           const whole = dayInterval(day, change.name);
           expect(whole.startMs <= ms && ms < whole.endMs).toBe(true);
-          expect(whole.startMs).toBe(
-            DateTime.fromMillis(ms, { zone: change.name }).startOf('day').toMillis(),
-          );
+          const luxonDay = (instant: number) =>
+            DateTime.fromMillis(instant, { zone: change.name }).toISODate();
+          expect([luxonDay(whole.startMs), luxonDay(whole.endMs - 1)]).toEqual([day, day]);
+          expect([luxonDay(whole.startMs - 1), luxonDay(whole.endMs)]).toEqual([
+            addDays(day, -1),
+            addDays(day, 1),
+          ]);
         },
       ),
       { numRuns: 2000 },

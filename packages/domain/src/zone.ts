@@ -1,5 +1,6 @@
 import { type Interval, MS_PER_HOUR, MS_PER_MIN } from './interval.ts';
 import { InputProblem, requireInRange } from './problem.ts';
+import type { Language } from './vocabulary.ts';
 import { offsetMsAt } from './zone-offset.ts';
 
 export { isZone } from './zone-offset.ts';
@@ -113,21 +114,18 @@ export function isSiteDay(text: string): boolean {
   return parseDay(text) !== null;
 }
 
-/** Languages that people are addressed in. */
-export type Locale = 'en' | 'es';
-
 // No accents: one letter outside GSM-7 (the a of "sábado") would cut a text message from 160 to 70 characters.
-const WEEKDAYS: Record<Locale, readonly string[]> = {
+const WEEKDAYS: Record<Language, readonly string[]> = {
   en: ['Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun'],
   es: ['lun', 'mar', 'mie', 'jue', 'vie', 'sab', 'dom'],
 };
-const MONTHS: Record<Locale, readonly string[]> = {
+const MONTHS: Record<Language, readonly string[]> = {
   en: ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'],
   es: ['ene', 'feb', 'mar', 'abr', 'may', 'jun', 'jul', 'ago', 'sep', 'oct', 'nov', 'dic'],
 };
 
 /** The site's wall clock in plain ASCII: "6:30 AM" in English, "6:30" of 24 hours in Spanish. Seconds are cut off. */
-export function formatClock(ms: number, zone: string, locale: Locale): string {
+export function formatClock(ms: number, zone: string, locale: Language): string {
   const minute = Math.floor(minuteOfDay(ms, zone));
   const hour = Math.floor(minute / 60);
   const minutes = String(minute % 60).padStart(2, '0');
@@ -136,7 +134,7 @@ export function formatClock(ms: number, zone: string, locale: Locale): string {
 }
 
 /** The day in plain ASCII: "Tue Dec 8" in English, "mar 8 dic" in Spanish. */
-export function formatDay(day: SiteDay, locale: Locale): string {
+export function formatDay(day: SiteDay, locale: Language): string {
   const weekday = WEEKDAYS[locale][weekdayOf(day) - 1];
   const month = MONTHS[locale][Number(day.slice(5, 7)) - 1];
   const dayOfMonth = Number(day.slice(8, 10));
