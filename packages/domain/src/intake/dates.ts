@@ -75,9 +75,9 @@ export function parseDate(text: string, options: DateOptions): Parsed<ReadDate> 
   const weekdayNumber = WEEKDAY_OF.get(weekday?.[1] ?? '');
   const rest = weekdayNumber === undefined ? undated : undated.slice(weekday?.[0].length);
   const parts = ok ? readParts(rest, options.order) : null;
-  if (parts === null) return refused({ code: wrongOrder(rest, options.order) ?? 'date' });
+  if (parts === null) return refused({ code: 'date' });
   const day = resolve(parts, options.referenceDay);
-  if (day === null) return refused({ code: 'date' });
+  if (day === null) return refused({ code: wrongOrder(rest, options) ?? 'date' });
   if (weekdayNumber !== undefined && weekdayOf(day) !== weekdayNumber) {
     return refused({ code: 'weekday-disagrees', day });
   }
@@ -162,11 +162,11 @@ function yearOf(text: string | undefined): number | null {
 }
 
 /** The reason when the text would be a day in the other order; null when it would not. */
-function wrongOrder(text: string, order: DateOrder): 'date-month-first' | 'date-day-first' | null {
-  const other = order === 'month-first' ? 'day-first' : 'month-first';
+function wrongOrder(text: string, options: DateOptions): 'date-month-first' | 'date-day-first' | null {
+  const other = options.order === 'month-first' ? 'day-first' : 'month-first';
   const parts = readParts(text, other);
-  if (parts === null || dayText(parts.year ?? 2024, parts) === null) return null;
-  return order === 'month-first' ? 'date-month-first' : 'date-day-first';
+  if (parts === null || resolve(parts, options.referenceDay) === null) return null;
+  return options.order === 'month-first' ? 'date-month-first' : 'date-day-first';
 }
 
 function resolve(parts: DayParts, referenceDay: SiteDay): SiteDay | null {

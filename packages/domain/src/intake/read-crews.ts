@@ -24,7 +24,9 @@ function readCrew(row: Row): CrewRecord | null {
   if (name === null) row.error({ code: 'required', field: 'name' }, 'name');
   const foreman = row.text('foremanName');
   const foremanEmail = row.read('foremanEmail', parseEmail);
-  const memberNames = distinct(row.texts('memberNames').flatMap(nameList));
+  // With a column per member, "Lind, Bo" is one person; in a single cell it would be two.
+  const split = row.columnCount('memberNames') > 1 ? spokenName : nameList;
+  const memberNames = distinct(row.texts('memberNames').flatMap(split));
   if (row.failed() || name === null) return null;
   const foremanName = foreman === null ? null : spokenName(foreman);
   return { naturalKey: fold(name), line: row.line, name, foremanName, foremanEmail, memberNames };

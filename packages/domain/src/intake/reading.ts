@@ -35,7 +35,7 @@ export function openReading(parts: Omit<Reading, 'assume'> & { readonly headerLi
   return {
     ...reading,
     assume(row, field, value) {
-      if (row.isMapped(field)) {
+      if (row.columnCount(field) > 0) {
         if (!row.has(field)) row.warn({ code: 'assumed', assumed: value }, field);
       } else if (!said.has(field)) {
         said.add(field);

@@ -37,8 +37,8 @@ export interface Row {
   has(field: IntakeField): boolean;
   /** How many fields of the row are filled. */
   filledCount(): number;
-  /** Whether the file has a column for the field. */
-  isMapped(field: IntakeField): boolean;
+  /** How many columns of the file feed the field. */
+  columnCount(field: IntakeField): number;
   /** The parsed cell; null when it is blank or was refused. */
   read<T>(field: IntakeField, parse: (text: string) => Parsed<T>): T | null;
   /** The text on one line, null when blank. */
@@ -164,7 +164,7 @@ function openRow(
     failed: () => failed,
     has: (field) => filled(field).length > 0,
     filledCount: () => [...cellsByField.keys()].filter((field) => filled(field).length > 0).length,
-    isMapped: (field) => cellsByField.has(field),
+    columnCount: (field) => cellsByField.get(field)?.length ?? 0,
     read(field, parse) {
       const cell = filled(field)[0];
       if (cell === undefined) return null;
