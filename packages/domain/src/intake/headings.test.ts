@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { fieldsOf, headingWords, type IntakeKind, intakeKinds } from './fields.ts';
+import { fieldsOf, type IntakeKind, intakeKinds } from './fields.ts';
+import { headingWords } from './heading-words.ts';
 import { findHeaderRow, readHeadings, SURE_CONFIDENCE, suggestMapping, unitOf } from './headings.ts';
 
 const fields = (kind: IntakeKind, headers: string[]): (string | null)[] =>

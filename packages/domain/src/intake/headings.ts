@@ -1,4 +1,5 @@
-import { fieldsOf, headingWords, type IntakeField, type IntakeKind, manyColumnFields } from './fields.ts';
+import { fieldsOf, type IntakeField, type IntakeKind, manyColumnFields } from './fields.ts';
+import { headingWords } from './heading-words.ts';
 import { fold, isBlank } from './text.ts';
 import type { QuantityUnit } from './values.ts';
 

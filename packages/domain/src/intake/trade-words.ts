@@ -3,220 +3,53 @@ import { type Parsed, type PlainReasonCode, parsed, type Reason, refused } from 
 import { fold, tidy } from './text.ts';
 
 /** Folded words for each value. What the trade calls things: common practice, no source. */
-type WordList<T extends string> = Readonly<Record<T, readonly string[]>>;
+type WordList<T extends string> = Readonly<Record<T, string>>;
 
 const ROLE_WORDS: WordList<Role> = {
-  owner: ['owner', 'co owner', 'boss', 'president', 'principal', 'dueno', 'duena', 'propietario', 'patron'],
-  dispatcher: [
-    'dispatcher',
-    'dispatch',
-    'scheduler',
-    'scheduling',
-    'office',
-    'office manager',
-    'coordinator',
-    'ops',
-    'operations',
-    'despachador',
-    'despachadora',
-    'despacho',
-    'oficina',
-  ],
-  foreman: [
-    'foreman',
-    'foreperson',
-    'forewoman',
-    'crew foreman',
-    'lead',
-    'lead man',
-    'leadman',
-    'crew lead',
-    'crew leader',
-    'capataz',
-    'mayordomo',
-    'encargado',
-    'lider',
-  ],
-  finisher: [
-    'finisher',
-    'concrete finisher',
-    'cement mason',
-    'cement finisher',
-    'mason',
-    'placer',
-    'laborer',
-    'labourer',
-    'labor',
-    'helper',
-    'apprentice',
-    'crew',
-    'crew member',
-    'form setter',
-    'acabador',
-    'terminador',
-    'albanil',
-    'obrero',
-    'peon',
-    'ayudante',
-    'cementero',
-  ],
-  sub: [
-    'sub',
-    'subs',
-    'sub finisher',
-    'finisher sub',
-    'subcontractor',
-    'sub contractor',
-    '1099',
-    'contract',
-    'contractor',
-    'subcontratista',
-    'subcontratado',
-  ],
+  owner: 'owner, co owner, boss, president, principal, dueno, duena, propietario, patron',
+  dispatcher:
+    'dispatcher, dispatch, scheduler, scheduling, office, office manager, coordinator, ops, operations, despachador, despachadora, despacho, oficina',
+  foreman:
+    'foreman, foreperson, forewoman, crew foreman, lead, lead man, leadman, crew lead, crew leader, capataz, mayordomo, encargado, lider',
+  finisher:
+    'finisher, concrete finisher, cement mason, cement finisher, mason, placer, laborer, labourer, labor, helper, apprentice, crew, crew member, form setter, acabador, terminador, albanil, obrero, peon, ayudante, cementero',
+  sub: 'sub, subs, sub finisher, finisher sub, subcontractor, sub contractor, 1099, contract, contractor, subcontratista, subcontratado',
 };
 
 const FINISH_WORDS: WordList<Finish> = {
-  float: [
-    'float',
-    'floated',
-    'bull float',
-    'mag float',
-    'magnesium float',
-    'wood float',
-    'rough',
-    'rough float',
-    'flotado',
-    'flota',
-  ],
-  broom: [
-    'broom',
-    'broomed',
-    'brm',
-    'light broom',
-    'lt broom',
-    'medium broom',
-    'med broom',
-    'heavy broom',
-    'fine broom',
-    'brushed',
-    'escobillado',
-    'escobado',
-    'escoba',
-    'cepillado',
-  ],
-  trowel: [
-    'trowel',
-    'troweled',
-    'trowelled',
-    'steel trowel',
-    'light trowel',
-    'smooth',
-    'smooth trowel',
-    'llana',
-    'allanado',
-    'liso',
-  ],
-  'hard-trowel': [
-    'hard trowel',
-    'hard troweled',
-    'hard trowelled',
-    'hard steel trowel',
-    'ht',
-    'burnished',
-    'burnish',
-    'power trowel',
-    'machine trowel',
-    'llana dura',
-    'pulido',
-    'pulido con maquina',
-  ],
-  exposed: [
-    'exposed',
-    'exposed aggregate',
-    'exposed agg',
-    'exp agg',
-    'exp aggregate',
-    'expo',
-    'ea',
-    'agregado expuesto',
-    'expuesto',
-    'lavado',
-  ],
-  stamped: ['stamped', 'stamp', 'stamped concrete', 'stmp', 'estampado'],
+  float:
+    'float, floated, bull float, mag float, magnesium float, wood float, rough, rough float, flotado, flota',
+  broom:
+    'broom, broomed, brm, light broom, lt broom, medium broom, med broom, heavy broom, fine broom, brushed, escobillado, escobado, escoba, cepillado',
+  trowel:
+    'trowel, troweled, trowelled, steel trowel, light trowel, smooth, smooth trowel, llana, allanado, liso',
+  'hard-trowel':
+    'hard trowel, hard troweled, hard trowelled, hard steel trowel, ht, burnished, burnish, power trowel, machine trowel, llana dura, pulido, pulido con maquina',
+  exposed:
+    'exposed, exposed aggregate, exposed agg, exp agg, exp aggregate, expo, ea, agregado expuesto, expuesto, lavado',
+  stamped: 'stamped, stamp, stamped concrete, stmp, estampado',
 };
 
 const PLACING_WORDS: WordList<PlacingMethod> = {
-  chute: [
-    'chute',
-    'truck chute',
-    'chute off truck',
-    'direct',
-    'tailgate',
-    'tail gate',
-    'off truck',
-    'off the truck',
-    'truck',
-    'mixer',
-    'canaleta',
-    'canal',
-    'canalon',
-    'directo',
-  ],
-  buggy: [
-    'buggy',
-    'buggies',
-    'power buggy',
-    'georgia buggy',
-    'concrete buggy',
-    'wheelbarrow',
-    'wheel barrow',
-    'carretilla',
-    'carretillas',
-    'vagoneta',
-  ],
-  'line-pump': [
-    'line pump',
-    'line',
-    'linepump',
-    'trailer pump',
-    'ground line',
-    'grout pump',
-    'hose',
-    'bomba de linea',
-    'bomba linea',
-    'bomba estacionaria',
-    'manguera',
-  ],
-  'boom-pump': [
-    'boom pump',
-    'boom',
-    'boompump',
-    'boom truck',
-    'z boom',
-    'bomba pluma',
-    'bomba de pluma',
-    'pluma',
-    'bomba telescopica',
-  ],
+  chute:
+    'chute, truck chute, chute off truck, direct, tailgate, tail gate, off truck, off the truck, truck, mixer, canaleta, canal, canalon, directo',
+  buggy:
+    'buggy, buggies, power buggy, georgia buggy, concrete buggy, wheelbarrow, wheel barrow, carretilla, carretillas, vagoneta',
+  'line-pump':
+    'line pump, line, linepump, trailer pump, ground line, grout pump, hose, bomba de linea, bomba linea, bomba estacionaria, manguera',
+  'boom-pump':
+    'boom pump, boom, boompump, boom truck, z boom, bomba pluma, bomba de pluma, pluma, bomba telescopica',
 };
 
 const CEMENT_WORDS: WordList<Cement> = {
-  'type-i': ['i', '1', 'normal', 'ordinary', 'gu', 'general use', 'portland', 'comun'],
-  'type-ii': ['ii', '2', 'ms', 'moderate sulfate', 'moderate', 'moderado'],
-  'type-iii': [
-    'iii',
-    '3',
-    'he',
-    'high early',
-    'hi early',
-    'high early strength',
-    'alta resistencia temprana',
-    'resistencia temprana',
-  ],
+  'type-i': 'i, 1, normal, ordinary, gu, general use, portland, comun',
+  'type-ii': 'ii, 2, ms, moderate sulfate, moderate, moderado',
+  'type-iii':
+    'iii, 3, he, high early, hi early, high early strength, alta resistencia temprana, resistencia temprana',
 };
 
 function lookup<T extends string>(words: WordList<T>, values: readonly T[]): ReadonlyMap<string, T> {
-  return new Map(values.flatMap((value) => words[value].map((word) => [word, value] as const)));
+  return new Map(values.flatMap((value) => words[value].split(', ').map((word) => [word, value] as const)));
 }
 
 const ROLES = lookup(ROLE_WORDS, ['owner', 'dispatcher', 'foreman', 'finisher', 'sub']);
