@@ -29,17 +29,27 @@ export type Program = {
   logFile?: string;
   /** also shows what it says as it says it */
   echo?: boolean;
+  /** writes to this process's own output, colours and all, and is not listened to */
+  inherit?: boolean;
 };
 
 const KEPT_LINES = 40;
 
 /** Starts a program that ends with this process, however this process ends. */
-export function startChild({ name, command, cwd, env, logFile, echo = false }: Program): Child {
+export function startChild({
+  name,
+  command,
+  cwd,
+  env,
+  logFile,
+  echo = false,
+  inherit = false,
+}: Program): Child {
   const [file, ...args] = command;
   const nodeOptions = [env.NODE_OPTIONS, `--import=${dieWithParent}`].filter(Boolean).join(' ');
   const child = spawn(file, args, {
     cwd,
-    stdio: ['ignore', 'pipe', 'pipe'],
+    stdio: inherit ? ['ignore', 'inherit', 'inherit'] : ['ignore', 'pipe', 'pipe'],
     env: { ...env, NODE_OPTIONS: nodeOptions },
   });
   const listeners: ((line: string) => void)[] = [];
@@ -47,6 +57,7 @@ export function startChild({ name, command, cwd, env, logFile, echo = false }: P
   if (logFile !== undefined) mkdirSync(path.dirname(logFile), { recursive: true });
   const log = logFile === undefined ? undefined : createWriteStream(logFile, { mode: 0o600 });
   for (const stream of [child.stdout, child.stderr]) {
+    if (stream === null) continue;
     createInterface({ input: stream }).on('line', (line) => {
       log?.write(`${line}\n`);
       if (echo) console.log(`${name}: ${line}`);

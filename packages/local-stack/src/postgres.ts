@@ -1,5 +1,5 @@
 import { type ChildProcess, execFile, spawn } from 'node:child_process';
-import { closeSync, existsSync, mkdirSync, openSync, readFileSync, statSync } from 'node:fs';
+import { closeSync, existsSync, mkdirSync, openSync, readFileSync, rmSync, statSync } from 'node:fs';
 import net from 'node:net';
 import path from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
@@ -46,6 +46,7 @@ const THROW_AWAY = ['fsync=off', 'synchronous_commit=off', 'full_page_writes=off
  * Starts the cluster kept in `dir`, making it first if need be. What a killed earlier start left
  * running there is ended first. The server ends with this process, however this process ends.
  * @param options.durable false for tests: much faster, and lost with the machine's power
+ * @param options.fresh a cluster that is there is removed first, and the new one when it is stopped
  * @param options.port a free one when not given
  * @param options.secrets passwords for the roles; set anew at each start, random when not given
  * @throws StackError when the folder is in use, holds another version, or the server does not start
@@ -53,11 +54,12 @@ const THROW_AWAY = ['fsync=off', 'synchronous_commit=off', 'full_page_writes=off
 export async function startCluster(options: {
   dir: string;
   durable: boolean;
+  fresh?: boolean;
   port?: number;
   secrets?: Secrets;
   say?: Say;
 }): Promise<Cluster> {
-  const { dir, durable, secrets = randomSecrets(), say = () => {} } = options;
+  const { dir, durable, fresh = false, secrets = randomSecrets(), say = () => {} } = options;
   const programs = await ensurePostgres(say);
   const user = serverUser();
   mkdirSync(dir, { recursive: true });
@@ -69,6 +71,7 @@ export async function startCluster(options: {
   }
   try {
     const home = await clusterHome(dir, user);
+    if (fresh) await removeData(home);
     const { superuserPassword } = secrets;
     const { data } = await ensureDataFolder({ home, programs, user, durable, superuserPassword });
     await clearLeftovers(data);
@@ -92,15 +95,21 @@ export async function startCluster(options: {
       await stopServer();
       throw error;
     }
+    let stopping: Promise<void> | undefined;
+    const stop = async () => {
+      await stopServer();
+      if (fresh) await removeData(home);
+      await lock.release();
+    };
     return {
       urls: urlsOf(server, secrets),
       adminUrl: adminUrlOf(server, secrets),
       port: server.port,
       home,
       ended: server.ended,
-      stop: async () => {
-        await stopServer();
-        await lock.release();
+      stop: () => {
+        stopping ??= stop();
+        return stopping;
       },
     };
   } catch (error) {
@@ -144,6 +153,13 @@ async function startServer(options: {
     child.once('error', () => resolve());
   });
   return { process: child, ended, port, logFile };
+}
+
+/** Removes a cluster, after ending a server that may still run on it. */
+async function removeData(home: string): Promise<void> {
+  const data = path.join(home, 'data');
+  if (existsSync(data)) await clearLeftovers(data);
+  rmSync(data, { recursive: true, force: true, maxRetries: 3 });
 }
 
 /** True once it answers, false when it refuses the superuser's password. */

@@ -1,4 +1,4 @@
-import { chmodSync, existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { chmodSync, existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { createServer } from 'node:net';
 import path from 'node:path';
 import { setTimeout as sleep } from 'node:timers/promises';
@@ -177,6 +177,7 @@ describe('npm start refuses in one sentence', () => {
     // To root every folder is writable, so it is tried as the account that owns nothing.
     const uid = process.getuid?.() === 0 ? 65534 : undefined;
     const local = path.join(checkout.root, '.local');
+    mkdirSync(local, { recursive: true });
     chmodSync(local, 0o555);
     const run = checkout.run('start', { uid });
     expect(await run.ended).toBe(1);

@@ -1,4 +1,3 @@
-import { rmSync } from 'node:fs';
 import path from 'node:path';
 import type { DatabaseUrls } from './app-database.ts';
 import { assertPortFree, StackError } from './bootstrap.mjs';
@@ -46,7 +45,7 @@ export type StackOptions = {
   /** where the database, its secrets and the logs are kept */
   dir: string;
   port: number;
-  /** false: the database is made anew, and may be lost with the machine's power; for tests */
+  /** false, for tests: the database is made anew, need not outlive the machine's power, and is removed at the end */
   durable: boolean;
   /** `dev` serves the sources with hot reload, `built` the production build */
   mode?: 'built' | 'dev';
@@ -76,7 +75,7 @@ export async function createStack(options: StackOptions): Promise<Stack> {
     await assertPortFree(port, mode === 'dev' ? 'dev' : 'start');
     const secrets = loadSecrets(path.join(dir, 'secrets.json'));
     const cluster = await step(say, 'Starting the database', () =>
-      startCluster({ dir: path.join(dir, 'pg'), durable, secrets, say }),
+      startCluster({ dir: path.join(dir, 'pg'), durable, fresh: !durable, secrets, say }),
     );
     lifecycle.onClose(() => cluster.stop());
     void cluster.ended.then(() => {
@@ -213,11 +212,6 @@ async function runServices(options: {
       worker = await startWorker();
     },
   };
-}
-
-/** Forgets the database and logs in `dir`. For folders of tests. */
-export function removeStackFiles(dir: string): void {
-  rmSync(dir, { recursive: true, force: true });
 }
 
 function usualPrograms(root: string, mode: 'built' | 'dev', port: number) {

@@ -1,0 +1,109 @@
+import { randomBytes } from 'node:crypto';
+import { mkdtempSync, readdirSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import pg from 'pg';
+import { type DatabaseUrls, ensureDatabase, withClient, withDatabase } from './app-database.ts';
+import { startCluster } from './postgres.ts';
+
+/** How a test run tells its workers of the server they share. */
+export const TEST_SERVER_NAMES = {
+  adminUrl: 'TEST_ADMIN_URL',
+  owner: 'TEST_OWNER_URL',
+  web: 'TEST_WEB_URL',
+  worker: 'TEST_WORKER_URL',
+} as const;
+
+const TEMPLATE = 'strikeboard_template';
+const FOLDER_PREFIX = 'strikeboard-test-pg-';
+/** Any number will do, as long as every worker of a run takes the same. */
+const TEMPLATE_LOCK = 4_321_001;
+
+type TestServer = { adminUrl: string; urls: DatabaseUrls };
+
+let server: Promise<TestServer> | undefined;
+
+/**
+ * A database of one's own with every migration applied and no rows but theirs, open to the three
+ * roles. It is on the server of the test run; when a package's tests are run alone, on a server that
+ * ends with them. Takes about 0.1 s, the first of a run 2 s more.
+ */
+export async function freshDatabase(): Promise<{
+  urls: DatabaseUrls;
+  adminUrl: string;
+  close(): Promise<void>;
+}> {
+  server ??= sharedServer() ?? ownServer();
+  const { adminUrl, urls } = await server;
+  const name = `test_${randomBytes(8).toString('hex')}`;
+  await withClient(adminUrl, async (admin) => {
+    await ensureTemplate(admin, withDatabase(urls.owner, TEMPLATE));
+    await ensureDatabase(admin, name, TEMPLATE);
+  });
+  return {
+    urls: {
+      owner: withDatabase(urls.owner, name),
+      web: withDatabase(urls.web, name),
+      worker: withDatabase(urls.worker, name),
+    },
+    adminUrl: withDatabase(adminUrl, name),
+    close: () =>
+      withClient(adminUrl, async (admin) => {
+        await admin.query(`drop database if exists ${pg.escapeIdentifier(name)} with (force)`);
+      }),
+  };
+}
+
+/** The template is migrated once per server, by whoever comes first; the others wait. */
+async function ensureTemplate(admin: pg.Client, ownerUrl: string): Promise<void> {
+  await admin.query('select pg_advisory_lock($1)', [TEMPLATE_LOCK]);
+  try {
+    const { rowCount } = await admin.query('select from pg_database where datname = $1', [TEMPLATE]);
+    if (rowCount !== 0) return;
+    const making = `${TEMPLATE}_making`;
+    await admin.query(`drop database if exists ${making} with (force)`);
+    await ensureDatabase(admin, making);
+    const { migrate } = await import('@strikeboard/db/migrate');
+    await migrate(withDatabase(ownerUrl, making));
+    // A database can be copied or renamed only while nobody is connected to it.
+    await admin.query('select pg_terminate_backend(pid) from pg_stat_activity where datname = $1', [making]);
+    await admin.query(`alter database ${making} rename to ${TEMPLATE}`);
+  } finally {
+    await admin.query('select pg_advisory_unlock($1)', [TEMPLATE_LOCK]);
+  }
+}
+
+function sharedServer(): Promise<TestServer> | undefined {
+  const { adminUrl, owner, web, worker } = Object.fromEntries(
+    Object.entries(TEST_SERVER_NAMES).map(([key, name]) => [key, process.env[name]]),
+  );
+  if (!adminUrl || !owner || !web || !worker) return undefined;
+  return Promise.resolve({ adminUrl, urls: { owner, web, worker } });
+}
+
+/** A throw-away server in the temporary folder; the kernel ends it with this process. */
+async function ownServer(): Promise<TestServer> {
+  removeAbandoned();
+  const folder = mkdtempSync(path.join(tmpdir(), `${FOLDER_PREFIX}${process.pid}-`));
+  const cluster = await startCluster({ dir: path.join(folder, 'pg'), durable: false });
+  process.once('exit', () => rmSync(folder, { recursive: true, force: true, maxRetries: 3 }));
+  return cluster;
+}
+
+/** Folders of test processes that were killed before they could remove them. */
+function removeAbandoned(): void {
+  for (const name of readdirSync(tmpdir())) {
+    const pid = new RegExp(`^${FOLDER_PREFIX}(\\d+)-`).exec(name)?.[1];
+    if (pid === undefined || isRunning(Number(pid))) continue;
+    rmSync(path.join(tmpdir(), name), { recursive: true, force: true });
+  }
+}
+
+function isRunning(pid: number): boolean {
+  try {
+    process.kill(pid, 0);
+    return true;
+  } catch (error) {
+    return error instanceof Error && 'code' in error && error.code === 'EPERM';
+  }
+}
