@@ -1,5 +1,6 @@
+import { spawn } from 'node:child_process';
 import { randomBytes } from 'node:crypto';
-import { mkdtempSync, readdirSync, rmSync } from 'node:fs';
+import { mkdtempSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import pg from 'pg';
@@ -15,7 +16,6 @@ export const TEST_SERVER_NAMES = {
 } as const;
 
 const TEMPLATE = 'strikeboard_template';
-const FOLDER_PREFIX = 'strikeboard-test-pg-';
 /** Any number will do, as long as every worker of a run takes the same. */
 const TEMPLATE_LOCK = 4_321_001;
 
@@ -83,27 +83,13 @@ function sharedServer(): Promise<TestServer> | undefined {
 
 /** A throw-away server in the temporary folder; the kernel ends it with this process. */
 async function ownServer(): Promise<TestServer> {
-  removeAbandoned();
-  const folder = mkdtempSync(path.join(tmpdir(), `${FOLDER_PREFIX}${process.pid}-`));
-  const cluster = await startCluster({ dir: path.join(folder, 'pg'), durable: false });
-  process.once('exit', () => rmSync(folder, { recursive: true, force: true, maxRetries: 3 }));
-  return cluster;
+  const folder = mkdtempSync(path.join(tmpdir(), 'strikeboard-test-pg-'));
+  removeAfterThisProcess(folder);
+  return await startCluster({ dir: path.join(folder, 'pg'), durable: false });
 }
 
-/** Folders of test processes that were killed before they could remove them. */
-function removeAbandoned(): void {
-  for (const name of readdirSync(tmpdir())) {
-    const pid = new RegExp(`^${FOLDER_PREFIX}(\\d+)-`).exec(name)?.[1];
-    if (pid === undefined || isRunning(Number(pid))) continue;
-    rmSync(path.join(tmpdir(), name), { recursive: true, force: true });
-  }
-}
-
-function isRunning(pid: number): boolean {
-  try {
-    process.kill(pid, 0);
-    return true;
-  } catch (error) {
-    return error instanceof Error && 'code' in error && error.code === 'EPERM';
-  }
+/** Test workers are ended by signal, without a chance to tidy up: another process does it after them. */
+function removeAfterThisProcess(folder: string): void {
+  const wait = `while kill -0 ${process.pid} 2>/dev/null; do sleep 1; done; sleep 1; rm -rf "$0"`;
+  spawn('/bin/sh', ['-c', wait, folder], { detached: true, stdio: 'ignore' }).unref();
 }
