@@ -54,6 +54,11 @@ export async function freshDatabase(): Promise<{
   };
 }
 
+/** Makes the template before any test asks for it, so that no test waits for the migrations. */
+export async function prepareTemplate({ adminUrl, urls }: TestServer): Promise<void> {
+  await withClient(adminUrl, (admin) => ensureTemplate(admin, withDatabase(urls.owner, TEMPLATE)));
+}
+
 /** The template is migrated once per server, by whoever comes first; the others wait. */
 async function ensureTemplate(admin: pg.Client, ownerUrl: string): Promise<void> {
   await admin.query('select pg_advisory_lock($1)', [TEMPLATE_LOCK]);

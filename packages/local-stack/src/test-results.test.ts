@@ -1,12 +1,15 @@
 import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
-import { afterAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { addTallies, tallyPlaywright, tallyVitest } from './test-results.ts';
 
 // The reports' shapes are those of vitest 4.1's and Playwright 1.65's JSON reporters.
 
-const folder = mkdtempSync(path.join(tmpdir(), 'strikeboard-results-'));
+let folder: string;
+beforeAll(() => {
+  folder = mkdtempSync(path.join(tmpdir(), 'strikeboard-results-'));
+});
 afterAll(() => rmSync(folder, { recursive: true }));
 
 function report(value: unknown): string {

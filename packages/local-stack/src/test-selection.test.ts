@@ -1,28 +1,32 @@
 import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
-import { afterAll, expect, it } from 'vitest';
+import { afterAll, beforeAll, expect, it } from 'vitest';
 import { escapeRegExp, selectTests, useDatabase } from './test-selection.ts';
 
 // How a part of a run is named: common practice, no source.
 
-const root = mkdtempSync(path.join(tmpdir(), 'strikeboard-selection-'));
-afterAll(() => rmSync(root, { recursive: true }));
+let root: string;
 
-const put = (file: string, text = '') => {
-  mkdirSync(path.join(root, path.dirname(file)), { recursive: true });
-  writeFileSync(path.join(root, file), text);
-};
-put('packages/domain/src/cure.test.ts');
-put('packages/domain/node_modules/zod/cure.test.ts');
-put(
-  'packages/db/src/moves.test.ts',
-  "import { freshDatabase } from '@strikeboard/local-stack/test-database';",
-);
-put('apps/web/src/board.test.tsx');
-put('tests/layers/layers.test.ts');
-put('tests/e2e/board.spec.ts');
-put('tests/e2e/helpers.ts');
+beforeAll(() => {
+  root = mkdtempSync(path.join(tmpdir(), 'strikeboard-selection-'));
+  const put = (file: string, text = '') => {
+    mkdirSync(path.join(root, path.dirname(file)), { recursive: true });
+    writeFileSync(path.join(root, file), text);
+  };
+  put('packages/domain/src/cure.test.ts');
+  put('packages/domain/node_modules/zod/cure.test.ts');
+  put(
+    'packages/db/src/moves.test.ts',
+    "import { freshDatabase } from '@strikeboard/local-stack/test-database';",
+  );
+  put('apps/web/src/board.test.tsx');
+  put('tests/layers/layers.test.ts');
+  put('tests/e2e/board.spec.ts');
+  put('tests/e2e/helpers.ts');
+});
+
+afterAll(() => rmSync(root, { recursive: true }));
 
 const unit = [
   'packages/db/src/moves.test.ts',

@@ -7,7 +7,7 @@ import { ensureChromium } from './chromium.ts';
 import { createLifecycle } from './lifecycle.ts';
 import { startCluster } from './postgres.ts';
 import { reportFailure, step } from './progress.ts';
-import { TEST_SERVER_NAMES } from './test-database.ts';
+import { prepareTemplate, TEST_SERVER_NAMES } from './test-database.ts';
 import { addTallies, type Tally, tallyPlaywright, tallyVitest } from './test-results.ts';
 import { escapeRegExp, type Selection, selectTests, useDatabase } from './test-selection.ts';
 import { repositoryRoot as root } from './workspace.ts';
@@ -80,6 +80,7 @@ async function startTestCluster() {
     startCluster({ dir, durable: false, fresh: true, say: console.log }),
   );
   lifecycle.onClose(() => cluster.stop());
+  await step(console.log, 'Migrating its template', () => prepareTemplate(cluster));
   return cluster;
 }
 
