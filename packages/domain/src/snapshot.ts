@@ -74,6 +74,8 @@ export interface Slab {
 /** What is to be placed. The times are on its visits. */
 export interface Pour {
   id: string;
+  /** Grows by one at each edit; edits name the version they were based on. */
+  version: number;
   siteId: string;
   name: string;
   jobRef: string | null;
