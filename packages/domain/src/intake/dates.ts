@@ -1,5 +1,6 @@
 import { addDays, daysBetween, isSiteDay, type SiteDay, weekdayOf } from '../zone.ts';
 import { type Parsed, parsed, type Reason, refused } from './reason.ts';
+import { withoutMarks } from './text.ts';
 import { parseTimeOfDay } from './times.ts';
 
 /** Whether `12/8` in a file is the 8th of December (the US way) or the 12th of August. */
@@ -62,12 +63,7 @@ interface DayParts {
  * year is the one nearest to `referenceDay` and carries a warning. A weekday that disagrees is refused.
  */
 export function parseDate(text: string, options: DateOptions): Parsed<ReadDate> {
-  const plain = text
-    .normalize('NFKD')
-    .replace(/\p{M}+/gu, '')
-    .toLowerCase()
-    .replace(/\s+/g, ' ')
-    .trim();
+  const plain = withoutMarks(text).toLowerCase().replace(/\s+/g, ' ').trim();
   const serial = readSerial(plain);
   if (serial) return parsed(serial);
   const { rest: undated, minute, ok } = splitTime(plain);

@@ -1,5 +1,6 @@
 import { add, divide, multiply, type Ratio, ratioOf, whole } from './ratio.ts';
 import { type Parsed, parsed, refused } from './reason.ts';
+import { withoutMarks } from './text.ts';
 
 /** Which sign a file uses for decimals; the other one groups thousands. */
 export type DecimalStyle = 'point' | 'comma';
@@ -18,21 +19,20 @@ const VULGAR: Readonly<Record<string, string>> = {
 
 /** Lower case, straight quote marks, plain fractions and single spaces: what the quantity parsers work on. */
 export function plainQuantity(text: string): string {
+  return withoutMarks(plainSigns(text)).replace(/''/g, '"').toLowerCase().replace(/\s+/g, ' ').trim();
+}
+
+function plainSigns(text: string): string {
+  if (/^[ -~]*$/.test(text)) return text.includes('`') ? text.replace(/`/g, "'") : text;
   return text
     .replace(/[½¼¾⅓⅔⅛⅜⅝⅞]/g, (sign) => VULGAR[sign] ?? sign)
-    .replace(/[²]/g, '2')
-    .replace(/[³]/g, '3')
+    .replace(/²/g, '2')
+    .replace(/³/g, '3')
     .replace(/[“”„″〃]/g, '"')
     .replace(/[‘’′´`]/g, "'")
-    .replace(/''/g, '"')
     .replace(/[×✕✖╳]/g, 'x')
     .replace(/[–—−]/g, '-')
-    .replace(/\u2044/g, '/')
-    .normalize('NFKD')
-    .replace(/\p{M}+/gu, '')
-    .toLowerCase()
-    .replace(/\s+/g, ' ')
-    .trim();
+    .replace(/\u2044/g, '/');
 }
 
 const POINT = /^([+-]?)(\d{1,3}(?:,\d{3})+|\d{1,3}(?: \d{3})+|\d{1,15})?(?:\.(\d{0,8}))?$/;

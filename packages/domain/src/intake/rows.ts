@@ -70,7 +70,7 @@ export function dataRows(
   );
   const watch: TotalsWatch = totalsWatch(columns, style.decimals);
   const rows: Row[] = [];
-  let above = new Map<number, string>();
+  const above = new Map<number, string>();
   for (let index = (headerIndex ?? -1) + 1; index < table.length; index++) {
     const cells = table[index] ?? [];
     const reason = skipReasonOf(cells, headers, watch);
@@ -84,7 +84,6 @@ export function dataRows(
     if (headers !== null && surplus > 0) {
       row.error({ code: 'too-many-cells', count: lastFilled(cells) + 1, headings: lastFilled(headers) + 1 });
     }
-    above = new Map(columns.map(({ column }) => [column, row.resolved(column)]));
     rows.push(row);
   }
   return rows;
@@ -119,14 +118,15 @@ export function readFileStyle(
   return { decimals, dates: dates.order };
 }
 
+/** `above`: the cells of the row before, for ditto marks; this row's take their place. */
 function openRow(
   line: number,
   source: readonly string[],
   columns: readonly { column: number; field: IntakeField; unit: QuantityUnit | null }[],
   style: FileStyle,
   findings: Findings,
-  above: ReadonlyMap<number, string>,
-): Row & { resolved(column: number): string } {
+  above: Map<number, string>,
+): Row {
   let failed = false;
   const report = (
     severity: 'error' | 'warning',
@@ -139,10 +139,11 @@ function openRow(
     findings.problems.push({ line, column: cell?.column ?? null, field, value, expected, severity });
   };
   const cellsByField = new Map<IntakeField, Cell[]>();
+  const filledByField = new Map<IntakeField, Cell[]>();
   for (const { column, field, unit } of columns) {
     const cell: Cell = { column, unit, text: source[column] ?? '' };
-    cellsByField.set(field, [...(cellsByField.get(field) ?? []), cell]);
-    const plain = tidy(cell.text);
+    append(cellsByField, field, cell);
+    const plain = cell.text === '' ? '' : tidy(cell.text);
     if (DITTO.test(plain)) {
       cell.text = above.get(column) ?? '';
       if (isBlank(cell.text)) report('error', { code: 'nothing-above' }, field, cell);
@@ -154,16 +155,17 @@ function openRow(
       report('error', { code: 'formula-without-result' }, field, cell);
       cell.text = '';
     }
+    above.set(column, cell.text);
+    if (!isBlankFor(field, cell.text)) append(filledByField, field, cell);
   }
-  const filled = (field: IntakeField): Cell[] =>
-    (cellsByField.get(field) ?? []).filter((cell) => !isBlankFor(field, cell.text));
+  const filled = (field: IntakeField): readonly Cell[] => filledByField.get(field) ?? [];
   const first = (field: IntakeField | undefined): Cell | undefined =>
     field === undefined ? undefined : (filled(field)[0] ?? cellsByField.get(field)?.[0]);
   return {
     line,
     failed: () => failed,
     has: (field) => filled(field).length > 0,
-    filledCount: () => [...cellsByField.keys()].filter((field) => filled(field).length > 0).length,
+    filledCount: () => filledByField.size,
     columnCount: (field) => cellsByField.get(field)?.length ?? 0,
     read(field, parse) {
       const cell = filled(field)[0];
@@ -191,14 +193,13 @@ function openRow(
     quantity: (field) => ({ style: style.decimals, unit: first(field)?.unit ?? null }),
     error: (expected, field) => report('error', expected, field ?? null, first(field)),
     warn: (expected, field) => report('warning', expected, field ?? null, first(field)),
-    resolved(column) {
-      for (const cells of cellsByField.values()) {
-        const cell = cells.find((one) => one.column === column);
-        if (cell) return cell.text;
-      }
-      return '';
-    },
   };
+}
+
+function append(cells: Map<IntakeField, Cell[]>, field: IntakeField, cell: Cell): void {
+  const before = cells.get(field);
+  if (before === undefined) cells.set(field, [cell]);
+  else before.push(cell);
 }
 
 /** Someone may be called "Na", so only dashes and emptiness are blank in a name. */

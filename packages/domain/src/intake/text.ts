@@ -1,11 +1,16 @@
+const PLAIN = /^[ -~]*$/;
+
+/** Without accents and with compatibility forms plain (NFKD). Most cells are ASCII and need no work. */
+export function withoutMarks(text: string): string {
+  return PLAIN.test(text) ? text : text.normalize('NFKD').replace(/\p{M}+/gu, '');
+}
+
 /**
  * Lower case, without accents, with every run of spaces and punctuation as one space. Two texts that a person
  * would call the same fold to the same text, so natural keys and word lists are compared folded.
  */
 export function fold(text: string): string {
-  return text
-    .normalize('NFKD')
-    .replace(/\p{M}+/gu, '')
+  return withoutMarks(text)
     .toLowerCase()
     .replace(/['’`´]/g, '')
     .replace(/[^\p{L}\p{N}]+/gu, ' ')

@@ -1,4 +1,5 @@
 import { type Parsed, parsed, refused } from './reason.ts';
+import { withoutMarks } from './text.ts';
 
 /** Half-open part of a day, minutes since midnight; `untilMin` is at most 1440 and may be below `fromMin` (a night). */
 export interface MinuteRange {
@@ -48,9 +49,7 @@ export function parseTimeRange(text: string): Parsed<MinuteRange> {
 }
 
 function plainTime(text: string): string {
-  return text
-    .normalize('NFKD')
-    .replace(/\p{M}+/gu, '')
+  return withoutMarks(text)
     .toLowerCase()
     .replace(/[–—−]/g, '-')
     .replace(/([ap])\. ?m\.?/g, '$1m')
