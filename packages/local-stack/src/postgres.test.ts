@@ -1,5 +1,6 @@
 import { execFileSync, spawn } from 'node:child_process';
 import {
+  chmodSync,
   existsSync,
   mkdirSync,
   mkdtempSync,
@@ -122,6 +123,27 @@ describe('startCluster', () => {
     );
     expect(readFileSync(path.join(dir, 'data', 'notes.txt'), 'utf8')).toBe('mine');
   });
+
+  it.runIf(process.getuid?.() === 0)(
+    'keeps a cluster elsewhere when its account cannot reach the folder',
+    async () => {
+      chmodSync(path.dirname(dir), 0o700);
+      const closed = path.join(path.dirname(dir), '.local', 'pg');
+      const first = await start({ dir: closed, durable: true });
+      try {
+        expect(first.home).toMatch(/^\/var\/tmp\/strikeboard-[0-9a-f]{16}$/);
+        await withClient(first.urls.owner, (client) => client.query('create table kept as select 3 as n'));
+        await first.stop();
+        const again = await start({ dir: closed, durable: true });
+        expect(again.home).toBe(first.home);
+        const { rows } = await withClient(again.urls.owner, (client) => client.query('select n from kept'));
+        expect(rows).toEqual([{ n: 3 }]);
+        await again.stop();
+      } finally {
+        rmSync(first.home, { recursive: true });
+      }
+    },
+  );
 
   it('does a half-finished set-up again', async () => {
     mkdirSync(path.join(dir, 'data.partial-1', 'base'), { recursive: true });

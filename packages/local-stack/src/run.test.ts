@@ -107,6 +107,28 @@ describe.sequential('npm start', () => {
     expect(await left()).toEqual([]);
   });
 
+  it('ends at once when told to in the middle of a long step', async () => {
+    const file = path.join(checkout.root, 'apps/web/scripts/prepare.ts');
+    const usual = readFileSync(file);
+    writeFileSync(file, 'setInterval(() => {}, 1000);');
+    const run = checkout.run('start');
+    await run.until('seeding the demo');
+    run.kill('SIGINT');
+    expect(await run.ended).toBe(130);
+    writeFileSync(file, usual);
+    expect(await left()).toEqual([]);
+  });
+
+  it('npm run dev serves the sources from the web app’s own folder, on the same database', async () => {
+    const run = checkout.run('dev');
+    await run.until(`Strikeboard is at ${address}`);
+    expect(await (await fetch(address)).text()).toBe(path.join(checkout.root, 'apps/web'));
+    expect(checkout.processes('worker.ts')).toHaveLength(1);
+    run.kill('SIGTERM');
+    expect(await run.ended).toBe(143);
+    expect(await left()).toEqual([]);
+  });
+
   it('ends everything when its parent is killed', async () => {
     // "; true" keeps the shell from handing its own process over.
     const run = checkout.run('start', { through: ['/bin/sh', '-c', '"$0" "$@"; true'] });

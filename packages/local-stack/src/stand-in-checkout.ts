@@ -42,6 +42,9 @@ setInterval(() => {}, 1000);
 `;
 
 const ASTRO = `#!/bin/sh
+if test "$1" = dev; then
+  exec "${process.execPath}" -e 'require("http").createServer((q, r) => r.writeHead(404).end(process.cwd())).listen(+process.argv[1], process.env.HOST)' "$5"
+fi
 mkdir -p dist/server
 echo "$*" >> dist/calls
 touch dist/server/entry.mjs
