@@ -79,3 +79,11 @@ export const quantityFields: ReadonlySet<IntakeField> = new Set<IntakeField>([
   'areaFt2',
   'placingRateYd3PerHour',
 ]);
+
+/** Fields of which at least one must have a column; the first stands for them in messages. */
+export const neededFields: { readonly [K in IntakeKind]: readonly [IntakeField, ...IntakeField[]] } = {
+  people: ['name', 'firstName', 'lastName'],
+  crews: ['name'],
+  sites: ['address'],
+  pours: ['siteName', 'siteAddress'],
+};

@@ -90,6 +90,19 @@ describe('headings', () => {
     expect(fields('pours', ['Order date', 'Crew', 'Invoice total', ''])).toEqual([null, null, null, null]);
   });
 
+  it('takes a heading in two languages when both mean the same', () => {
+    expect(fields('people', ['Nombre / Name', 'Teléfono (Cell)', 'Crew / Phone'])).toEqual([
+      'name',
+      'phone',
+      null,
+    ]);
+    expect(fields('pours', ['Yds/hr', 'Yds/load', 'Acabado | Finish'])).toEqual([
+      'placingRateYd3PerHour',
+      null,
+      'finish',
+    ]);
+  });
+
   it('is unsure of weak words, slips of the pen and rivals', () => {
     const confidence = (kind: IntakeKind, headers: string[]): number[] =>
       suggestMapping(kind, headers).map((one) => one.confidence);

@@ -143,7 +143,21 @@ export function unitOf(heading: string): QuantityUnit | null {
   return UNIT_OF[word] ?? (bracket === undefined && plain.includes(' ') ? (UNIT_OF[last] ?? null) : null);
 }
 
+/** A heading in two languages ("Nombre / Name") counts when all its parts mean the same field. */
 function bestMatch(kind: IntakeKind, heading: string): Match | null {
+  const match = matchOf(kind, heading);
+  const parts = heading.split(/[/|()]|\s-\s|\n/).filter((part) => fold(part) !== '');
+  if (match !== null || parts.length < 2) return match;
+  const [first = null, ...others] = parts.map((part) => matchOf(kind, part));
+  if (first === null || others.some((other) => other?.field !== first.field)) return null;
+  const confidence = others.reduce(
+    (least, other) => Math.min(least, other?.confidence ?? 0),
+    first.confidence,
+  );
+  return { field: first.field, confidence: confidence * SAME_WORDS };
+}
+
+function matchOf(kind: IntakeKind, heading: string): Match | null {
   const spellings = spellingsOf(heading);
   let best: Match | null = null;
   let tied = false;

@@ -442,6 +442,17 @@ describe('any file', () => {
     );
   });
 
+  it('has one error, not one per row, where a needed column is missing', () => {
+    const result = readRows(
+      'people',
+      [['Phone'], ['970-555-0101'], ['970-555-0102']],
+      suggestMapping('people', ['Phone']),
+      options,
+    );
+    expect(brief(result.problems)).toEqual(['error 1:- column-required']);
+    expect(result.records).toEqual([]);
+  });
+
   it('is refused as a whole only for a bad reference day, zone or column', () => {
     const bad =
       (change: Partial<ReadOptions>): (() => void) =>

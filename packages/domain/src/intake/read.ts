@@ -1,7 +1,7 @@
 import { InputProblem } from '../problem.ts';
 import { isSiteDay } from '../zone.ts';
 import { isZone } from '../zone-offset.ts';
-import type { IntakeKind } from './fields.ts';
+import { type IntakeKind, neededFields } from './fields.ts';
 import { findHeaderRow } from './headings.ts';
 import { readCrews } from './read-crews.ts';
 import { readPeople } from './read-people.ts';
@@ -21,7 +21,7 @@ const readers: { readonly [K in IntakeKind]: (reading: Reading) => RecordOf[K][]
 /**
  * Reads the rows under the headings into records. Lines are the rows of the sheet, counted from 1 and with blank
  * ones, as spreadsheet programs number them. Rows with an error are not among the records; problems come in the
- * order of the file. Never throws at a cell. Throws InputProblem for a bad reference day, zone or column.
+ * order of the file. Without a column that every record needs there is one error and no record. Never throws at a cell. Throws InputProblem for a bad reference day, zone or column.
  */
 export function readRows<K extends IntakeKind>(
   kind: K,
@@ -35,7 +35,22 @@ export function readRows<K extends IntakeKind>(
   const style = readFileStyle(table, headerIndex, mapping, findings.problems);
   const rows = dataRows(table, headerIndex, mapping, style, findings);
   const headerLine = (headerIndex ?? 0) + 1;
-  const records = readers[kind](openReading({ rows, style, options, findings, headerLine }));
+  const needed = neededFields[kind];
+  const isReadable = mapping.some(({ field }) => field !== null && needed.includes(field));
+  if (!isReadable) {
+    const expected = { code: 'column-required', field: needed[0] } as const;
+    findings.problems.push({
+      line: headerLine,
+      column: null,
+      field: needed[0],
+      value: '',
+      expected,
+      severity: 'error',
+    });
+  }
+  const records = isReadable
+    ? readers[kind](openReading({ rows, style, options, findings, headerLine }))
+    : [];
   return {
     records: records.toSorted((a, b) => a.line - b.line),
     problems: findings.problems.toSorted(inFileOrder),

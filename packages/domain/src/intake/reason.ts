@@ -53,6 +53,8 @@ export type Reason =
   | { readonly code: PlainReasonCode }
   /** A cell that must not be blank. `field` is the record's field. */
   | { readonly code: 'required'; readonly field: string }
+  /** No column is mapped to a field that every record needs; none of the rows can be read. */
+  | { readonly code: 'column-required'; readonly field: string }
   | { readonly code: 'out-of-range'; readonly min: number; readonly max: number; readonly unit: string }
   | { readonly code: 'weekday-disagrees'; readonly day: SiteDay }
   | { readonly code: 'longitude-sign'; readonly suggested: string }

@@ -51,6 +51,8 @@ export const reasonWordsEn: ReasonWords = {
   'read-day-first': () => 'Dates of this file were read day first, for one of them can be read no other way.',
   'thickness-unusual': () => 'Unusual for a slab: please check the thickness.',
   required: (reason) => `Must not be blank: ${fieldLabel(reason.field, 'en').toLowerCase()}.`,
+  'column-required': ({ field }) =>
+    `No column is mapped to ${fieldLabel(field, 'en').toLowerCase()}: choose the one that has it.`,
   'out-of-range': ({ min, max, unit }) =>
     `Expected ${min === 0 ? 'more than 0 and at most' : `${min} to`} ${max.toLocaleString('en-US')} ${unit}.`,
   'weekday-disagrees': ({ day }) => `The weekday and the date disagree: ${day} is another weekday.`,

@@ -55,6 +55,8 @@ export const reasonWordsEs: ReasonWords = {
     'Las fechas de este archivo se leyeron con el día primero, pues una no puede leerse de otro modo.',
   'thickness-unusual': () => 'Raro para una losa: revise el espesor.',
   required: (reason) => `No puede quedar vacío: ${fieldLabel(reason.field, 'es').toLowerCase()}.`,
+  'column-required': ({ field }) =>
+    `Ninguna columna corresponde a ${fieldLabel(field, 'es').toLowerCase()}: elija la que lo tiene.`,
   'out-of-range': ({ min, max, unit }) =>
     `Se esperaba ${min === 0 ? 'más de 0 y a lo sumo' : `de ${min} a`} ${max.toLocaleString('en-US')} ${unit}.`,
   'weekday-disagrees': ({ day }) => `El día de la semana y la fecha no concuerdan: ${day} cae en otro día.`,

@@ -14,9 +14,10 @@ const ROWS_LOOKED_AT = 200;
 export function readCsv(source: string): { readonly table: string[][]; readonly delimiter: Delimiter } {
   const unified = source.replace(/\r\n?/g, '\n');
   const named = /^"?sep=([,;\t|])"?(?=\n|$)/i.exec(unified);
-  const text = named ? unified.slice(named[0].length) : unified;
+  const text = (named ? unified.slice(named[0].length) : unified).trimEnd();
   const delimiter = DELIMITERS.find((one) => one === named?.[1]) ?? detectDelimiter(text);
   const parsed = Papa.parse<string[]>(text, { delimiter, newline: '\n', preview: SHEET_LIMITS.rows * 2 });
+  if (parsed.meta.truncated) throw new SheetProblem({ code: 'too-many-rows', limit: SHEET_LIMITS.rows });
   const fault = parsed.errors.find((error) => error.type === 'Quotes');
   if (fault) throw new SheetProblem({ code: 'broken-quotes', line: (fault.row ?? 0) + 1 });
   return { table: parsed.data, delimiter };

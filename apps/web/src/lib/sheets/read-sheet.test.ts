@@ -124,6 +124,13 @@ describe('limits', () => {
     const rows = (count: number): Uint8Array => encode(`Job\n${'Lot\n'.repeat(count - 1)}\n\n`);
     expect((await readSheet(rows(20_000), 'a.csv')).sheets[0]?.table).toHaveLength(20_000);
     expect(await fault(rows(20_001))).toEqual({ code: 'too-many-rows', limit: 20_000 });
+    expect(await fault(encode(`Job\n${'\n'.repeat(50_000)}Lot\n`))).toEqual({
+      code: 'too-many-rows',
+      limit: 20_000,
+    });
+    expect(
+      (await readSheet(encode(`Job\nLot${'\n'.repeat(50_000)}`), 'a.csv')).sheets[0]?.table,
+    ).toHaveLength(2);
     const columns = (count: number): Uint8Array => encode(`${Array(count).fill('x').join(',')},,\n`);
     expect((await readSheet(columns(200), 'a.csv')).sheets[0]?.table[0]).toHaveLength(200);
     expect(await fault(columns(201))).toEqual({ code: 'too-many-columns', limit: 200 });

@@ -1,7 +1,7 @@
 import { decodeText, type TextEncoding } from './decode-text.ts';
 import { SHEET_LIMITS } from './limits.ts';
 import { type Delimiter, readCsv } from './read-csv.ts';
-import { type NamedTable, readXlsx } from './read-xlsx.ts';
+import type { NamedTable } from './read-xlsx.ts';
 import { SheetProblem } from './sheet-problem.ts';
 import { refuseMarkup, sniff } from './sniff.ts';
 
@@ -23,6 +23,8 @@ export async function readSheet(bytes: Uint8Array, fileName: string): Promise<Re
     throw new SheetProblem({ code: 'too-big', limitMb: SHEET_LIMITS.bytes / 1024 / 1024 });
   }
   if (sniff(bytes) === 'zip') {
+    // The workbook library takes a good part of a second to load, which a CSV need not wait for.
+    const { readXlsx } = await import('./read-xlsx.ts');
     return { sheets: filled(await readXlsx(bytes)), encoding: 'utf-8', delimiter: null };
   }
   const { text, encoding } = decodeText(bytes);
