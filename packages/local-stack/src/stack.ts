@@ -14,7 +14,7 @@ import { FAKE_SMS_FROM, readSettings, serviceEnvironment } from './settings.ts';
 import { repositoryRoot, tsxLoader } from './workspace.ts';
 
 /** Where the web app takes texts that people send; the provider is told this address. */
-export const INBOUND_SMS_PATH = '/api/webhooks/sms/inbound';
+export const INBOUND_SMS_PATH = '/api/sms/inbound';
 
 const READY_WITHIN_MS = 90_000;
 
