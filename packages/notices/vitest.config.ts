@@ -1,0 +1,6 @@
+import { defineConfig } from 'vitest/config';
+
+// The machine's zone is one that no site and no reader in the tests has.
+process.env.TZ = 'Pacific/Chatham';
+
+export default defineConfig({ test: { include: ['src/**/*.test.ts'] } });
