@@ -7,6 +7,9 @@ export const APP_DATABASE = 'strikeboard';
 /** The application's roles. None is a superuser and none may bypass row-level security. */
 export const ROLES = { owner: 'app_owner', web: 'app_web', worker: 'app_worker' } as const;
 
+/** Owns the few functions that look across companies. It cannot sign in; the owner may hand functions to it. */
+const CROSS_ROLE = 'app_cross';
+
 /** Connection strings of one database, by role: the owner migrates, web and worker serve. */
 export type DatabaseUrls = { owner: string; web: string; worker: string };
 
@@ -24,6 +27,9 @@ export async function ensureRoles(admin: pg.Client, secrets: Secrets): Promise<v
       `alter role ${role} login nosuperuser nocreatedb nocreaterole noreplication nobypassrls password ${pg.escapeLiteral(password)}`,
     );
   }
+  const { rowCount } = await admin.query('select from pg_roles where rolname = $1', [CROSS_ROLE]);
+  if (rowCount === 0) await admin.query(`create role ${CROSS_ROLE} nologin nosuperuser nobypassrls`);
+  await admin.query(`grant ${CROSS_ROLE} to ${ROLES.owner}`);
 }
 
 /** Makes a database owned by the owner role, open to the three roles and to nobody else, if it is not there. */
