@@ -1,8 +1,6 @@
 import { z } from 'zod';
 
-const phone = z.string().regex(/^\+[1-9]\d{1,14}$/, 'a number such as +17205550100');
-
-/** What web server and worker are told by their environment. */
+/** What web server and worker are told by their environment; the settings of notices are read by their package. */
 const environmentSchema = z.object({
   /** Where PostgreSQL is, as the role that this process serves with. */
   DATABASE_URL: z
@@ -16,15 +14,6 @@ const environmentSchema = z.object({
       'an origin: no path and no slash at its end',
     ),
   AUTH_SECRET: z.string().min(32, 'at least 32 characters'),
-  SMS_ACCOUNT_SID: z.string().min(1, 'the SMS account'),
-  SMS_AUTH_TOKEN: z.string().min(1, "the SMS account's token"),
-  SMS_FROM: phone,
-  /** Only for another server that speaks the SMS provider's protocol. */
-  SMS_BASE_URL: z.url('an address such as https://sms.example.com').optional(),
-  SMTP_URL: z.string().regex(/^smtps?:\/\/\S+$/, 'an address such as smtp://mail.example.com:587'),
-  MAIL_FROM: z.string().min(3, 'an address such as Board <board@example.com>'),
-  /** How long further changes are folded into one notice. */
-  SETTLE_SECONDS: z.coerce.number('a whole number of seconds').int().min(0).max(3600).default(120),
   LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent']).default('info'),
   PORT: z.coerce.number('a port number').int().min(1).max(65535).default(4321),
   HOST: z.string().min(1).default('127.0.0.1'),

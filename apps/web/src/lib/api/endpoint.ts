@@ -55,6 +55,23 @@ export function personEndpoint<
   });
 }
 
+/** An endpoint of the slug's company that opens its transactions by itself. */
+export function memberEndpoint<
+  P extends string,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  O extends z.ZodType,
+>(
+  contract: Contract<P, Q, B, O>,
+  handle: (given: Given<P, Q, B> & { person: SignedIn; company: Company }) => Promise<Answer<O>>,
+): APIRoute {
+  return personEndpoint(contract, async (given) => {
+    const { company } = given.context.locals;
+    if (!company) throw new ProblemError('not-found', 'There is nothing at this address for you.');
+    return handle({ ...given, company });
+  });
+}
+
 /**
  * An endpoint of the slug's company. The handler runs in one transaction with company and person set; with
  * `idempotent` the first answer is kept in it, and given again to the same key.
@@ -68,16 +85,14 @@ export function companyEndpoint<
   contract: Contract<P, Q, B, O>,
   handle: (given: Given<P, Q, B> & { person: SignedIn; company: Company; tx: Tx }) => Promise<Answer<O>>,
 ): APIRoute {
-  return personEndpoint(contract, async (given) => {
-    const { company } = given.context.locals;
-    if (!company) throw new ProblemError('not-found', 'There is nothing at this address for you.');
-    const of = { companyId: company.id, personId: given.person.id };
-    if (!contract.idempotent) return inCompany(given.db, of, (tx) => handle({ ...given, company, tx }));
+  return memberEndpoint(contract, async (given) => {
+    const of = { companyId: given.company.id, personId: given.person.id };
+    if (!contract.idempotent) return inCompany(given.db, of, (tx) => handle({ ...given, tx }));
     const key = readKey(given.context.request);
     const requestHash = hashOf(contract, given.params, given.body);
     const kept = await inCompany(given.db, of, (tx) =>
       oncePerKey(tx, { key, personId: given.person.id, requestHash, nowMs: given.nowMs }, async () => {
-        const body = await handle({ ...given, company, tx });
+        const body = await handle({ ...given, tx });
         if (body instanceof Response) throw new Error('An idempotent endpoint answers with JSON.');
         return { status: 200, body };
       }),

@@ -37,6 +37,7 @@ export const slabSchema = z.object({
 export const pourSchema = z
   .object({
     id,
+    version: number,
     siteId: id,
     name: z.string(),
     jobRef: maybeText,
