@@ -1,6 +1,6 @@
+import type { ToldFacts } from '@strikeboard/domain/told';
 import { minuteOfDay } from '@strikeboard/domain/zone';
 import { type FactsText, factsText, type Style, timeText } from './facts-text.ts';
-import type { ToldFacts } from './told-facts.ts';
 import { wordsOf } from './words/words.ts';
 
 /** What of the facts has changed; each stands for one sentence of the message. */

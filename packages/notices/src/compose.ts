@@ -1,4 +1,5 @@
 import { MS_PER_HOUR } from '@strikeboard/domain/interval';
+import { calledOffFacts, type ToldFacts } from '@strikeboard/domain/told';
 import type { Channel } from '@strikeboard/domain/vocabulary';
 import { type ChangedFact, changedFacts, changeSentences } from './changes.ts';
 import { factsText, oneLine, type Style } from './facts-text.ts';
@@ -6,7 +7,6 @@ import { toGsm7 } from './gsm-7.ts';
 import { mailOf, smsOf } from './message.ts';
 import type { Compose, Composed, ComposedNotice, PersonSituation, Situation, ToldNow } from './ports.ts';
 import { type QuietHours, sendAtMs } from './quiet-hours.ts';
-import type { ToldFacts } from './told-facts.ts';
 import type { NoticeKind } from './words/words.ts';
 
 /** Nobody is told of what began longer ago than this. */
@@ -46,7 +46,7 @@ function composeFor(
     return { notices: [], told: renamed ? [{ personId, facts: now, asksAnew: false }] : [] };
   }
   const isOff = due.kind === 'called-off' || due.kind === 'put-off' || due.kind === 'taken-off';
-  const facts = isOff ? { ...due.facts, calledOff: true } : due.facts;
+  const facts = isOff ? calledOffFacts(due.facts) : due.facts;
   const toldNow = { personId, facts, asksAnew: due.kind === 'changed' || person.saidNo };
   const starts = [due.told?.crewStartMs, due.facts.crewStartMs].filter((ms) => ms !== undefined);
   if (Math.max(...starts) + PAST_AFTER_MS < situation.nowMs) return { notices: [], told: [toldNow] };

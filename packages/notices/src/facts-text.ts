@@ -1,8 +1,8 @@
+import type { ToldFacts } from '@strikeboard/domain/told';
 import { yd3ToM3 } from '@strikeboard/domain/units';
 import type { Language } from '@strikeboard/domain/vocabulary';
 import { formatClock, formatDay, isZone, siteDayOf, weekdayOf } from '@strikeboard/domain/zone';
 import { offsetMsAt } from '@strikeboard/domain/zone-offset';
-import type { ToldFacts } from './told-facts.ts';
 import { wordsOf } from './words/words.ts';
 
 /** How facts are printed: for whom, and whether short (a text) or in full (an e-mail). */

@@ -20,17 +20,11 @@ export function createMailDriver(
   config: Pick<NoticesConfig, 'smtpUrl' | 'mailFrom' | 'appOrigin'>,
   options: { timeoutMs?: number } = {},
 ): MailDriver {
-  const timeoutMs = options.timeoutMs ?? DEFAULT_TIMEOUT_MS;
+  const url = withTimeouts(config.smtpUrl, options.timeoutMs ?? DEFAULT_TIMEOUT_MS);
   const { hostname } = new URL(config.appOrigin);
   return {
     async send({ id, to, subject, text, html }) {
-      const transport = createTransport({
-        url: config.smtpUrl,
-        connectionTimeout: timeoutMs,
-        greetingTimeout: timeoutMs,
-        socketTimeout: timeoutMs,
-        dnsTimeout: timeoutMs,
-      });
+      const transport = createTransport(url);
       // The message is opened for reading only once the server has greeted and, where asked, let us in; a connection
       // that breaks before has carried nothing of it.
       let isUnderWay = false;
@@ -63,6 +57,15 @@ export function createMailDriver(
       }
     },
   };
+}
+
+/** The mailer takes no options beside an address, but reads them out of its query; those set there stay. */
+function withTimeouts(smtpUrl: string, timeoutMs: number): string {
+  const url = new URL(smtpUrl);
+  for (const name of ['connectionTimeout', 'greetingTimeout', 'socketTimeout', 'dnsTimeout']) {
+    if (!url.searchParams.has(name)) url.searchParams.set(name, String(timeoutMs));
+  }
+  return url.href;
 }
 
 const refusalSchema = z.object({ responseCode: z.int(), code: z.string().optional() });

@@ -4,8 +4,8 @@
  * belongs to one company.
  */
 
+import type { ToldFacts } from '@strikeboard/domain/told';
 import type { Channel, Language, NoticeState, VisitState } from '@strikeboard/domain/vocabulary';
-import type { ToldFacts } from './told-facts.ts';
 
 /** How a person stands to a visit now: holds a shift, has an open offer, or neither (was told of it before). */
 export type Relation = 'shift' | 'offer' | 'off';

@@ -49,7 +49,7 @@ const AFTER_SI =
 
 /** A word that says yes or no as the first of a few. */
 const FIRST_YES = phrases(
-  'yes, yeah, yep, yup, yea, ok, okay, sure, confirmed, si, simon, claro, confirmado, orale',
+  'yes, yeah, yep, yup, yea, ok, okay, sure, confirmed, simon, claro, confirmado, orale',
 );
 const FIRST_NO = phrases('no, nope, nah, nel, sorry, cant');
 const MAX_WORDS = 8;

@@ -59,7 +59,7 @@ export function createSmsDriver(
 }
 
 const refusalSchema = z.object({ status: z.int(), code: z.number().optional() });
-const networkSchema = z.object({ code: z.string(), cause: z.unknown() });
+const networkSchema = z.object({ code: z.string(), cause: z.unknown().optional() });
 const causeSchema = z.object({ syscall: z.string() });
 
 /** Sorts what the SDK throws; exported for its table of cases. */

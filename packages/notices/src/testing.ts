@@ -1,6 +1,6 @@
+import type { ToldFacts } from '@strikeboard/domain/told';
 import { instantAt } from '@strikeboard/domain/zone';
 import type { PersonSituation, Situation } from './ports.ts';
-import type { ToldFacts } from './told-facts.ts';
 
 export const SITE_ZONE = 'America/Denver';
 export const COMPANY_ID = '01936f2a-0000-7000-8000-000000000001';
