@@ -18,7 +18,12 @@ export interface Database {
 
 /** Opens a pool. Sessions read and print instants in UTC, whatever the server's own zone. */
 export function openDatabase(url: string, options: { max?: number } = {}): Database {
-  const pool = new pg.Pool({ connectionString: url, max: options.max ?? 10, options: '-c timezone=UTC', application_name: 'strikeboard' });
+  const pool = new pg.Pool({
+    connectionString: url,
+    max: options.max ?? 10,
+    options: '-c timezone=UTC',
+    application_name: 'strikeboard',
+  });
   // A connection that is lost with its server must not end the process; the pool opens another at need.
   pool.on('error', () => {});
   pool.on('connect', (client) => client.on('error', () => {}));
@@ -42,7 +47,12 @@ export function asPerson<T>(db: Database, personId: string, work: (tx: Tx) => Pr
   return inSettings(db, '', personId, work);
 }
 
-function inSettings<T>(db: Database, companyId: string, personId: string, work: (tx: Tx) => Promise<T>): Promise<T> {
+function inSettings<T>(
+  db: Database,
+  companyId: string,
+  personId: string,
+  work: (tx: Tx) => Promise<T>,
+): Promise<T> {
   return guarded(() =>
     db.orm.transaction(async (tx) => {
       await tx.execute(

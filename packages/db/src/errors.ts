@@ -34,7 +34,11 @@ export class Refused extends Error {
   readonly code: 'stops' | 'reason-needed';
   readonly findings: readonly Finding[];
   readonly nearest: readonly { crewId: string; crewStartMs: number }[];
-  constructor(code: 'stops' | 'reason-needed', findings: readonly Finding[], nearest: readonly { crewId: string; crewStartMs: number }[] = []) {
+  constructor(
+    code: 'stops' | 'reason-needed',
+    findings: readonly Finding[],
+    nearest: readonly { crewId: string; crewStartMs: number }[] = [],
+  ) {
     super(code === 'stops' ? 'The checks say that it cannot be.' : 'A caution needs a reason.');
     this.name = 'Refused';
     this.code = code;

@@ -29,15 +29,18 @@ function boundMs(text: string): number {
   return ms;
 }
 
+/** A range as PostgreSQL prints it, half-open and bounded on both sides. */
+export function parseRange(text: string): Interval {
+  const match = /^\["?([^",]+)"?,"?([^",]+)"?\)$/.exec(text);
+  if (!match?.[1] || !match[2]) throw new Error(`Not a half-open bounded range: ${text}`);
+  return { startMs: boundMs(match[1]), endMs: boundMs(match[2]) };
+}
+
 /** Half-open range of instants, bounded on both sides, as epoch milliseconds. */
 export const instantRange = customType<{ data: Interval; driverData: string }>({
   dataType: () => 'tstzrange',
   toDriver: (value) => `[${new Date(value.startMs).toISOString()},${new Date(value.endMs).toISOString()})`,
-  fromDriver: (text) => {
-    const match = /^\["?([^",]+)"?,"?([^",]+)"?\)$/.exec(text);
-    if (!match?.[1] || !match[2]) throw new Error(`Not a half-open bounded range: ${text}`);
-    return { startMs: boundMs(match[1]), endMs: boundMs(match[2]) };
-  },
+  fromDriver: parseRange,
 });
 
 /** Case-insensitive text. */
