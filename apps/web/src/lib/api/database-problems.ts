@@ -41,7 +41,7 @@ export function problemOfDatabase(error: unknown): Problem | null {
   if (error instanceof Conflict) {
     const detail = conflictSentences[error.code] ?? 'What is there now does not allow this.';
     const code = error.code === 'key-reused' ? 'key-reused' : 'conflict';
-    return { ...problemOf(code, detail, { current: error.detail }), code: error.code };
+    return { ...problemOf(code, detail, { current: error.facts }), code: error.code };
   }
   return null;
 }
