@@ -129,15 +129,13 @@ export async function leaveWord(
   word: { visitId: string; dueMs: number; createdBy: string | null },
 ): Promise<void> {
   const dueAt = new Date(word.dueMs);
-  await tx
-    .insert(outbox)
-    .values({
-      companyId: currentCompany,
-      id: newId(),
-      visitId: word.visitId,
-      dueAt,
-      createdBy: word.createdBy,
-    });
+  await tx.insert(outbox).values({
+    companyId: currentCompany,
+    id: newId(),
+    visitId: word.visitId,
+    dueAt,
+    createdBy: word.createdBy,
+  });
   await addTellJob(tx, word.visitId, dueAt);
 }
 

@@ -67,7 +67,7 @@ export async function placeVisit(
     throw new Conflict('visit-closed', { state: visit.state });
   const index = await indexAround(tx, of.placement.crewStartMs, [visit.id]);
   if (!index.crews.has(of.placement.crewId)) throw new NotFound('crew', of.placement.crewId);
-  return writePlacement(tx, { ...of, kind: 'place', visit, index, pourIds: [] });
+  return writePlacement(tx, { ...of, kind: 'place', visit, index });
 }
 
 /** Writes a placement of a visit that is locked and read. Also for a pour that was edited where it stands. */
@@ -79,17 +79,20 @@ export async function writePlacement(
     reasons: Reasons;
     visit: VisitRow;
     index: BoardIndex;
-    /** Pours whose rows undo puts back too, as they were. */
-    pourIds: readonly string[];
-    keptPours?: KeptRows['pours'];
+    /** Rows as they were before an edit that this placement follows; undo puts those back. */
+    kept?: Pick<KeptRows, 'visits' | 'pours'>;
   },
 ): Promise<BoardChange> {
   const { visit, placement, index } = of;
   const planned = planPlacement(index, placement, of.nowMs);
   const accepted = acceptedReasons(of, planned.findings);
   const touched = visitsOfChange(planned.change);
-  const before = await keepRows(tx, touched, of.pourIds);
-  if (of.keptPours) before.pours = of.keptPours;
+  const before = await keepRows(tx, touched);
+  if (of.kept) {
+    const { visits: visitsBefore, pours: poursBefore } = of.kept;
+    before.visits = before.visits.map((row) => visitsBefore.find(({ id }) => id === row.id) ?? row);
+    before.pours = poursBefore;
+  }
 
   await setVisit(tx, visit.id, {
     crewId: planned.change.visit.crewId,
@@ -315,16 +318,14 @@ async function writeShifts(tx: Tx, { change }: PlannedPlacement, before: KeptRow
             .update(shifts)
             .set({ during, held: heldRange, ...(stays ? {} : { answer: 'none' as const, answeredAt: null }) })
             .where(and(eq(shifts.companyId, currentCompany), eq(shifts.id, row.id)))
-        : inner
-            .insert(shifts)
-            .values({
-              companyId: currentCompany,
-              id: newId(),
-              visitId: change.visitId,
-              personId,
-              during,
-              held: heldRange,
-            }),
+        : inner.insert(shifts).values({
+            companyId: currentCompany,
+            id: newId(),
+            visitId: change.visitId,
+            personId,
+            during,
+            held: heldRange,
+          }),
     );
   }
 }
@@ -396,16 +397,14 @@ async function writeBooking(tx: Tx, { change }: PlannedPlacement, before: KeptRo
           .update(equipmentBookings)
           .set({ during, held, ...(stays ? {} : { state: 'drafted' as const }) })
           .where(and(eq(equipmentBookings.companyId, currentCompany), eq(equipmentBookings.id, kept.id)))
-      : inner
-          .insert(equipmentBookings)
-          .values({
-            companyId: currentCompany,
-            id: newId(),
-            visitId: change.visitId,
-            equipmentId,
-            during,
-            held,
-          }),
+      : inner.insert(equipmentBookings).values({
+          companyId: currentCompany,
+          id: newId(),
+          visitId: change.visitId,
+          equipmentId,
+          during,
+          held,
+        }),
   );
 }
 

@@ -1,0 +1,425 @@
+/** Pours and other visits as they are made, edited and looked into. */
+
+import { fold } from '@strikeboard/domain/intake/text';
+import type { Finish, Jointing, PlacingMethod, VisitKind } from '@strikeboard/domain/vocabulary';
+import { and, desc, eq, sql } from 'drizzle-orm';
+import type { Tx } from '../client.ts';
+import { Conflict, constraintOf, NotFound, StaleVersion } from '../errors.ts';
+import { newId } from '../ids.ts';
+import { currentCompany } from '../tables/columns.ts';
+import {
+  audit,
+  members,
+  notices,
+  offers,
+  pourSlabs,
+  pours,
+  shifts,
+  sites,
+  slabs,
+  visits,
+} from '../tables/index.ts';
+import { type BoardChange, lockBoard, recordBoardChange } from './board-change.ts';
+import { type Acting, indexAround, type Reasons, writePlacement } from './placement.ts';
+import { readToldState } from './told-state.ts';
+import { keepRows } from './visit-rows.ts';
+
+const IN_FT2_PER_YD3 = 324;
+
+/** What can be set of a pour. Yards are yd³, temperatures °F, times minutes; null falls back to the company's rule. */
+export interface PourFields {
+  name: string;
+  jobRef: string | null;
+  orderedYd3: number;
+  mixId: string | null;
+  finish: Finish;
+  placingMethod: PlacingMethod;
+  jointing: Jointing;
+  placingRateYd3PerHour: number | null;
+  loadYd3: number | null;
+  setUpMin: number | null;
+  concreteTempF: number | null;
+  peopleToPlace: number | null;
+  peopleToFinish: number | null;
+  pumpId: string | null;
+  willCall: boolean;
+  readiness: { item: string; done: boolean }[];
+  notes: string | null;
+  /** Day that the customer wants it, in the site's zone. */
+  wantedOn: string | null;
+}
+
+/**
+ * Makes a waiting pour with one slab.
+ * @throws NotFound for a site, mix or pump that the company has not
+ * @throws Conflict `pour-taken` when the site has a pour of that name for that day already
+ */
+export async function createPour(
+  tx: Tx,
+  of: Acting & {
+    pour: Pick<PourFields, 'name' | 'orderedYd3' | 'finish' | 'placingMethod'> &
+      Partial<PourFields> & { siteId: string; areaFt2: number; thicknessIn: number };
+  },
+): Promise<BoardChange> {
+  await lockBoard(tx);
+  const { siteId, areaFt2, thicknessIn, wantedOn = null, ...fields } = of.pour;
+  await siteOf(tx, siteId);
+  const ids = { pour: newId(), slab: newId(), visit: newId() };
+  await naming({ mixId: fields.mixId, pumpId: fields.pumpId, name: fields.name }, () =>
+    tx.insert(pours).values({
+      companyId: currentCompany,
+      id: ids.pour,
+      siteId,
+      naturalKey: `by-hand|${siteId}|${fold(fields.name)}|${wantedOn ?? ''}`,
+      ...columnsOf(fields),
+      name: fields.name,
+      orderedYd3: String(fields.orderedYd3),
+      finish: fields.finish,
+      placingMethod: fields.placingMethod,
+    }),
+  );
+  await tx.insert(slabs).values({
+    companyId: currentCompany,
+    id: ids.slab,
+    siteId,
+    name: fields.name,
+    thicknessIn: String(thicknessIn),
+    areaFt2: areaFt2.toFixed(4),
+    volumeYd3: ((areaFt2 * thicknessIn) / IN_FT2_PER_YD3).toFixed(4),
+  });
+  await tx.insert(pourSlabs).values({ companyId: currentCompany, pourId: ids.pour, slabId: ids.slab });
+  await tx.insert(visits).values({
+    companyId: currentCompany,
+    id: ids.visit,
+    kind: 'pour',
+    siteId,
+    pourId: ids.pour,
+    partYd3: String(fields.orderedYd3),
+    title: fields.name,
+    wantedOn,
+  });
+  await noteVisit(tx, of, { action: 'create-pour', visitId: ids.visit, after: { ...of.pour } });
+  return recordBoardChange(tx, { kind: 'create-pour', actorPersonId: of.actorId, visitIds: [ids.visit] });
+}
+
+/** Makes a waiting visit that is no pour. @throws NotFound for a site that the company has not */
+export async function createVisit(
+  tx: Tx,
+  of: Acting & {
+    visit: {
+      kind: Exclude<VisitKind, 'pour'>;
+      siteId: string;
+      title: string;
+      plannedMin: number;
+      wantedOn: string | null;
+    };
+  },
+): Promise<BoardChange> {
+  await lockBoard(tx);
+  await siteOf(tx, of.visit.siteId);
+  const id = newId();
+  await tx.insert(visits).values({ companyId: currentCompany, id, ...of.visit });
+  await noteVisit(tx, of, { action: 'create-visit', visitId: id, after: of.visit });
+  return recordBoardChange(tx, { kind: 'create-visit', actorPersonId: of.actorId, visitIds: [id] });
+}
+
+/**
+ * Changes a pour. Where it stands on the board it is planned and checked anew in the same transaction, and refused like
+ * a drop would be. Of several visits of one pour the yards are shared as before.
+ * @throws NotFound, StaleVersion, Refused as placeVisit does
+ */
+export async function editPour(
+  tx: Tx,
+  of: Acting & { pourId: string; baseVersion: number; fields: Partial<PourFields>; reasons: Reasons },
+): Promise<BoardChange> {
+  await lockBoard(tx);
+  const [pour] = await tx
+    .select()
+    .from(pours)
+    .where(and(eq(pours.companyId, currentCompany), eq(pours.id, of.pourId)))
+    .for('update');
+  if (!pour) throw new NotFound('pour', of.pourId);
+  if (pour.version !== of.baseVersion) {
+    throw new StaleVersion(
+      { kind: 'pour', id: pour.id },
+      { version: pour.version },
+      await pourChangedSince(tx, pour, of.baseVersion),
+    );
+  }
+  const visitRows = await tx
+    .select()
+    .from(visits)
+    .where(
+      and(
+        eq(visits.companyId, currentCompany),
+        eq(visits.pourId, pour.id),
+        sql`${visits.state} <> 'called-off'`,
+      ),
+    )
+    .orderBy(visits.id);
+  const visitIds = visitRows.map(({ id }) => id);
+  const before = await keepRows(tx, visitIds, [pour.id]);
+  const { wantedOn, ...fields } = of.fields;
+  await naming({ mixId: fields.mixId, pumpId: fields.pumpId, name: fields.name ?? pour.name }, () =>
+    tx
+      .update(pours)
+      .set({ ...columnsOf(fields), version: sql`${pours.version} + 1` })
+      .where(and(eq(pours.companyId, currentCompany), eq(pours.id, pour.id))),
+  );
+  const share = fields.orderedYd3 === undefined ? null : fields.orderedYd3 / Number(pour.orderedYd3);
+  for (const visit of visitRows) {
+    await tx
+      .update(visits)
+      .set({
+        version: sql`${visits.version} + 1`,
+        ...(wantedOn !== undefined && visit.state === 'waiting' && { wantedOn }),
+        ...(fields.name !== undefined && { title: fields.name }),
+        ...(share !== null &&
+          visit.partYd3 !== null && { partYd3: (Number(visit.partYd3) * share).toFixed(3) }),
+      })
+      .where(and(eq(visits.companyId, currentCompany), eq(visits.id, visit.id)));
+  }
+  await tx.insert(audit).values({
+    companyId: currentCompany,
+    id: newId(),
+    at: new Date(of.nowMs),
+    actorPersonId: of.actorId,
+    action: 'edit-pour',
+    subjectKind: 'pour',
+    subjectId: pour.id,
+    before: Object.fromEntries(
+      Object.keys(fields).map((key) => [key, pour[key as keyof typeof pour] ?? null]),
+    ),
+    after: of.fields,
+  });
+  for (const visitId of visitIds) await noteVisit(tx, of, { action: 'edit-pour', visitId, after: of.fields });
+
+  let last: BoardChange | null = null;
+  for (const visit of visitRows) {
+    if (visit.during === null || visit.crewId === null || visit.state === 'done') continue;
+    const index = await indexAround(tx, visit.during.startMs, [visit.id]);
+    last = await writePlacement(tx, {
+      ...of,
+      kind: 'edit-pour',
+      // A pump chosen anew is the one to book; otherwise the one that is booked stays.
+      placement: {
+        visitId: visit.id,
+        crewId: visit.crewId,
+        crewStartMs: visit.during.startMs,
+        ...(fields.pumpId !== undefined && { pumpId: fields.pumpId }),
+      },
+      visit,
+      index,
+      kept: before,
+    });
+  }
+  if (last !== null) return last;
+  const versions = await tx
+    .select({ id: visits.id, version: visits.version })
+    .from(visits)
+    .where(and(eq(visits.companyId, currentCompany), eq(visits.pourId, pour.id)));
+  return recordBoardChange(tx, {
+    kind: 'edit-pour',
+    actorPersonId: of.actorId,
+    visitIds,
+    inverse: { before, versions: Object.fromEntries(versions.map(({ id, version }) => [id, version])) },
+  });
+}
+
+export interface VisitDetail {
+  people: {
+    personId: string;
+    name: string;
+    role: string;
+    state: string;
+    answer: 'none' | 'yes' | 'no';
+    told: boolean;
+  }[];
+  notices: {
+    id: string;
+    personName: string;
+    channel: string;
+    state: string;
+    body: string;
+    queuedMs: number;
+  }[];
+  history: { id: string; atMs: number; actorName: string | null; action: string; reason: string | null }[];
+}
+
+/** Who is on a visit and what has happened to it, newest first. @throws NotFound */
+export async function visitDetail(tx: Tx, visitId: string): Promise<VisitDetail> {
+  const [visit] = await tx
+    .select({ id: visits.id })
+    .from(visits)
+    .where(and(eq(visits.companyId, currentCompany), eq(visits.id, visitId)));
+  if (!visit) throw new NotFound('visit', visitId);
+  const member = (personId: typeof shifts.personId | typeof offers.personId | typeof notices.personId) =>
+    and(eq(members.companyId, currentCompany), eq(members.personId, personId));
+  const shiftRows = await tx
+    .select({ shift: shifts, name: members.name, role: members.role })
+    .from(shifts)
+    .innerJoin(members, member(shifts.personId))
+    .where(
+      and(
+        eq(shifts.companyId, currentCompany),
+        eq(shifts.visitId, visitId),
+        sql`(${shifts.state} = 'held' or ${shifts.answer} = 'no')`,
+      ),
+    )
+    .orderBy(members.name);
+  const offerRows = await tx
+    .select({ offer: offers, name: members.name, role: members.role })
+    .from(offers)
+    .innerJoin(members, member(offers.personId))
+    .where(
+      and(
+        eq(offers.companyId, currentCompany),
+        eq(offers.visitId, visitId),
+        sql`${offers.state} in ('open', 'declined', 'lapsed')`,
+      ),
+    )
+    .orderBy(members.name);
+  const noticeRows = await tx
+    .select({ notice: notices, name: members.name })
+    .from(notices)
+    .innerJoin(members, member(notices.personId))
+    .where(and(eq(notices.companyId, currentCompany), eq(notices.visitId, visitId)))
+    .orderBy(desc(notices.queuedAt))
+    .limit(100);
+  const auditRows = await tx
+    .select({ entry: audit, name: members.name })
+    .from(audit)
+    .leftJoin(members, and(eq(members.companyId, audit.companyId), eq(members.personId, audit.actorPersonId)))
+    .where(
+      and(eq(audit.companyId, currentCompany), eq(audit.subjectKind, 'visit'), eq(audit.subjectId, visitId)),
+    )
+    .orderBy(desc(audit.id))
+    .limit(200);
+  const state = await readToldState(tx, [visitId]);
+  const onShift = new Set(
+    shiftRows.filter(({ shift }) => shift.state === 'held').map(({ shift }) => shift.personId),
+  );
+  return {
+    people: [
+      ...shiftRows
+        .filter(({ shift }) => shift.state === 'held' || !onShift.has(shift.personId))
+        .map(({ shift, name, role }) => ({
+          personId: shift.personId,
+          name,
+          role,
+          state: shift.state as string,
+          answer: shift.answer,
+          told: state.isTold(shift),
+        })),
+      ...offerRows
+        .filter(({ offer }) => !onShift.has(offer.personId))
+        .map(({ offer, name, role }) => ({
+          personId: offer.personId,
+          name,
+          role,
+          state: offer.state as string,
+          answer: offer.state === 'declined' ? ('no' as const) : ('none' as const),
+          told: state.isTold(offer),
+        })),
+    ],
+    notices: noticeRows.map(({ notice, name }) => ({
+      id: notice.id,
+      personName: name,
+      channel: notice.channel,
+      state: notice.state,
+      body: notice.body,
+      queuedMs: notice.queuedAt.getTime(),
+    })),
+    history: auditRows.map(({ entry, name }) => ({
+      id: entry.id,
+      atMs: entry.at.getTime(),
+      actorName: name,
+      action: entry.action,
+      reason: entry.reason,
+    })),
+  };
+}
+
+const text = (value: number | null | undefined) =>
+  value === undefined ? undefined : value === null ? null : String(value);
+
+/** Given fields as columns; what is not given is left out. */
+function columnsOf(fields: Partial<Omit<PourFields, 'wantedOn'>>) {
+  return {
+    name: fields.name,
+    jobRef: fields.jobRef,
+    orderedYd3: fields.orderedYd3 === undefined ? undefined : String(fields.orderedYd3),
+    mixId: fields.mixId,
+    finish: fields.finish,
+    placingMethod: fields.placingMethod,
+    jointing: fields.jointing,
+    placingRateYd3PerHour: text(fields.placingRateYd3PerHour),
+    loadYd3: text(fields.loadYd3),
+    setUpMin: fields.setUpMin,
+    concreteTempF: text(fields.concreteTempF),
+    peopleToPlace: fields.peopleToPlace,
+    peopleToFinish: fields.peopleToFinish,
+    pumpId: fields.pumpId,
+    willCall: fields.willCall,
+    readiness: fields.readiness,
+    notes: fields.notes,
+  };
+}
+
+async function siteOf(tx: Tx, siteId: string): Promise<void> {
+  const [site] = await tx
+    .select({ id: sites.id })
+    .from(sites)
+    .where(and(eq(sites.companyId, currentCompany), eq(sites.id, siteId)));
+  if (!site) throw new NotFound('site', siteId);
+}
+
+/** Words what the database refuses of a pour's references. */
+async function naming(
+  of: { mixId?: string | null; pumpId?: string | null; name: string },
+  write: () => Promise<unknown>,
+): Promise<void> {
+  try {
+    await write();
+  } catch (error) {
+    const constraint = constraintOf(error);
+    if (constraint === 'pours_mix_fk') throw new NotFound('mix', of.mixId ?? '');
+    if (constraint === 'pours_pump_fk') throw new NotFound('pump', of.pumpId ?? '');
+    if (constraint === 'pours_natural_key') throw new Conflict('pour-taken', { name: of.name });
+    throw error;
+  }
+}
+
+async function noteVisit(
+  tx: Tx,
+  of: Acting,
+  entry: { action: string; visitId: string; after: unknown },
+): Promise<void> {
+  await tx.insert(audit).values({
+    companyId: currentCompany,
+    id: newId(),
+    at: new Date(of.nowMs),
+    actorPersonId: of.actorId,
+    action: entry.action,
+    subjectKind: 'visit',
+    subjectId: entry.visitId,
+    after: entry.after,
+  });
+}
+
+/** Names of the fields that were edited since a version, from the history of edits. */
+async function pourChangedSince(
+  tx: Tx,
+  pour: typeof pours.$inferSelect,
+  baseVersion: number,
+): Promise<string[]> {
+  const rows = await tx
+    .select({ after: audit.after })
+    .from(audit)
+    .where(
+      and(eq(audit.companyId, currentCompany), eq(audit.subjectKind, 'pour'), eq(audit.subjectId, pour.id)),
+    )
+    .orderBy(desc(audit.id))
+    .limit(Math.max(1, pour.version - baseVersion));
+  return [...new Set(rows.flatMap(({ after }) => Object.keys((after ?? {}) as object)))];
+}
