@@ -389,7 +389,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
               className="relative flex min-h-full flex-col"
               style={{ width: headWidthPx + boardWidthPx }}
             >
-              <div role="grid" aria-label={words.boardLabel} aria-busy={!snapshot} className="grow">
+              <section aria-label={words.boardLabel} aria-busy={!snapshot} className="grow">
                 <DayHeads scale={scale} headWidthPx={headWidthPx} today={today} />
                 {!snapshot && <p className="sticky left-0 p-6">{words.loading}</p>}
                 {laid.map(({ crew, cards, rows, people }) => (
@@ -429,7 +429,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
                     <a href={`/${slug}/set-up`}>set them up</a>.
                   </p>
                 )}
-              </div>
+              </section>
               {waiting && (
                 <WaitingStrip
                   waiting={waiting}

@@ -15,12 +15,10 @@ export function DayHeads({
   const marks = hourMarks(scale);
   return (
     <div
-      role="row"
       className="sticky top-0 z-20 flex border-b-2 border-line-strong bg-concrete"
       style={{ width: headWidthPx + scale.days * scale.dayWidthPx }}
     >
       <div
-        role="columnheader"
         className="sticky left-0 z-10 shrink-0 border-r border-line-strong bg-concrete px-2 py-1 text-sm font-medium"
         style={{ width: headWidthPx }}
       >
@@ -29,7 +27,6 @@ export function DayHeads({
       {Array.from({ length: scale.days }, (_, column) => addDays(scale.from, column)).map((day) => (
         <div
           key={day}
-          role="columnheader"
           aria-current={day === today ? 'date' : undefined}
           className={`relative h-11 shrink-0 border-r border-line-strong ${day === today ? 'bg-lumber-wash' : ''}`}
           style={{ width: scale.dayWidthPx }}

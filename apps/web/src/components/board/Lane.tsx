@@ -80,20 +80,18 @@ export function Lane({
   boardWidthPx: number;
   dayWidthPx: number;
   nowPx: number | null;
-  cardOf: (visit: Visit, widthPx: number) => CardProps;
+  cardOf: (visit: Visit, widthPx: number) => CardProps | null;
   mayMove: boolean;
   onOpen: (visitId: string) => void;
 }) {
   const heightPx = rows * ROW_HEIGHT_PX + 8;
   return (
-    <div
-      role="row"
+    <section
       aria-label={crew.name}
       className="flex border-b border-line-strong"
       style={{ width: headWidthPx + boardWidthPx, height: heightPx }}
     >
       <div
-        role="rowheader"
         className="sticky left-0 z-10 shrink-0 border-r border-line-strong bg-sheet px-2 py-1.5"
         style={{ width: headWidthPx }}
       >
@@ -103,7 +101,6 @@ export function Lane({
         <div className="line-clamp-2 text-xs text-ink-soft">{people}</div>
       </div>
       <div
-        role="gridcell"
         data-lane={crew.id}
         className="relative shrink-0 bg-sheet"
         style={{
@@ -131,7 +128,7 @@ export function Lane({
               height: ROW_HEIGHT_PX - 4,
             }}
           >
-            <VisitCard {...cardOf(card.visit, card.widthPx)} mayMove={mayMove} onOpen={onOpen} />
+            <VisitCard card={cardOf(card.visit, card.widthPx)} mayMove={mayMove} onOpen={onOpen} />
           </div>
         ))}
         {target && (
@@ -148,6 +145,6 @@ export function Lane({
           </div>
         )}
       </div>
-    </div>
+    </section>
   );
 }

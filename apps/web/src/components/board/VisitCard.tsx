@@ -133,16 +133,23 @@ export function cardLabel({ visit, site, pour, findings, answers }: CardProps): 
   return parts.filter((part) => part !== null).join(', ');
 }
 
-/** A card that can be picked up by pointer, touch or keyboard, and opened. */
+/** A card that can be picked up by pointer, touch or keyboard, and opened. Draws nothing for a card that is not known yet. */
 export function VisitCard({
+  card,
+  overdue = false,
   onOpen,
   mayMove,
-  ...card
-}: CardProps & { onOpen: (visitId: string) => void; mayMove: boolean }) {
+}: {
+  card: CardProps | null;
+  overdue?: boolean;
+  onOpen: (visitId: string) => void;
+  mayMove: boolean;
+}) {
   const { attributes, listeners, setNodeRef, isDragging } = useDraggable({
-    id: card.visit.id,
-    disabled: !mayMove || card.visit.state === 'done',
+    id: card?.visit.id ?? 'unknown',
+    disabled: !mayMove || !card || card.visit.state === 'done',
   });
+  if (!card) return null;
   return (
     <button
       type="button"
@@ -154,7 +161,7 @@ export function VisitCard({
       data-visit={card.visit.id}
       className={`block h-full w-full touch-manipulation select-none ${isDragging ? 'opacity-35' : ''}`}
     >
-      <CardFace {...card} />
+      <CardFace {...card} overdue={overdue} />
     </button>
   );
 }

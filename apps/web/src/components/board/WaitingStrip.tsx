@@ -62,7 +62,7 @@ export function WaitingStrip({
   today: SiteDay;
   /** A card is held over the strip. */
   held: boolean;
-  cardOf: (visit: Visit) => CardProps;
+  cardOf: (visit: Visit) => CardProps | null;
   mayMove: boolean;
   onOpen: (visitId: string) => void;
 }) {
@@ -71,7 +71,7 @@ export function WaitingStrip({
       {visits.map((visit) => (
         <li key={visit.id} className="h-13 w-full">
           <VisitCard
-            {...cardOf(visit)}
+            card={cardOf(visit)}
             overdue={visit.wantedOn !== null && visit.wantedOn < today}
             mayMove={mayMove}
             onOpen={onOpen}

@@ -1,4 +1,5 @@
-import { type BoardIndex, snapshotWithVisitRows } from '@strikeboard/domain/board-index';
+import type { BoardIndex } from '@strikeboard/domain/board-index';
+import { snapshotWithChange } from '@strikeboard/domain/change-rows';
 import { type Finding, worstSeverity } from '@strikeboard/domain/finding';
 import { nearestFit } from '@strikeboard/domain/fit';
 import { needsReason, planPlacement } from '@strikeboard/domain/plan-placement';
@@ -11,7 +12,6 @@ import { showToast } from '../ui/Toasts.tsx';
 import type { BoardPatch } from './board-data.ts';
 import { words } from './board-words.ts';
 import type { Refusal } from './DropDialog.tsx';
-import { rowsAfter } from './drop.ts';
 
 const FITS_SHOWN = 4;
 
@@ -128,10 +128,9 @@ export function useMoves({ slug, snapshot, index, apply, show, reload, say }: Bo
       if (worstSeverity(planned.findings) === 'stop')
         return refuse('stops', placement, planned.findings, again);
       const asking = needsReason(planned.findings, []);
-      if (asking.length > 0 && reason === null) return refuse('reason-needed', placement, asking, again);
-
-      const rows = rowsAfter(index, planned.change);
-      if (rows) show(snapshotWithVisitRows(snapshot, rows));
+      if (asking.length > 0 && reason === null)
+        return refuse('reason-needed', placement, planned.findings, again);
+      show(snapshotWithChange(snapshot, index, planned.change));
       try {
         const change = await call(placeVisit, {
           params: { slug, id: placement.visitId },
@@ -141,8 +140,7 @@ export function useMoves({ slug, snapshot, index, apply, show, reload, say }: Bo
             crewStartMs: placement.crewStartMs,
             pumpId: placement.pumpId,
             baseVersion: visit.version,
-            reasons:
-              reason === null ? {} : Object.fromEntries(asking.map((finding) => [finding.code, reason])),
+            reasons: reason === null ? {} : Object.fromEntries(asking.map((code) => [code, reason])),
           },
         });
         const crew = index.crews.get(placement.crewId)?.name ?? '';

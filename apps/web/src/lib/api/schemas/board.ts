@@ -137,9 +137,25 @@ export const readVisit = contract({
         told: z.boolean(),
       }),
     ),
-    notices: z.array(z.unknown()),
-    history: z.array(z.unknown()),
-    followUps: z.array(z.unknown()),
+    notices: z.array(
+      z.object({
+        id: z.string(),
+        personName: z.string(),
+        channel: z.string(),
+        state: z.string(),
+        body: z.string(),
+        queuedMs: z.number(),
+      }),
+    ),
+    history: z.array(
+      z.object({
+        id: z.string(),
+        atMs: z.number(),
+        actorName: z.string().nullable(),
+        action: z.string(),
+        reason: z.string().nullable(),
+      }),
+    ),
   }),
 });
 
