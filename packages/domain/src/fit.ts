@@ -43,6 +43,7 @@ const MAX_PLANS = 20_000;
  * shows, unless the one asked for does not. Empty when nothing fits. Throws InputProblem for unknown ids and impossible options.
  */
 export function nearestFit(index: BoardIndex, visitId: string, fromMs: number, options: FitOptions): Fit[] {
+  requireFinite('fromMs', fromMs);
   const stepMs = requireInRange('stepMin', options.stepMin ?? 30, 1, 1440) * MS_PER_MIN;
   const limit = requireInRange('limit', options.limit ?? 3, 1, 1000);
   const { visit, site } = basisOf(index, visitId);

@@ -32,7 +32,7 @@ export function travelMin(from: Place | null, to: Place | null, rules: TravelRul
     return rules.travelUnknownMin;
   const miles = greatCircleMiles(from.latDeg, from.lonDeg, to.latDeg, to.lonDeg);
   const minutes = (miles * rules.travelRoadFactor * 60) / rules.travelMph;
-  return Math.ceil(minutes / ROUND_TO_MIN - NOISE) * ROUND_TO_MIN;
+  return Math.max(0, Math.ceil(minutes / ROUND_TO_MIN - NOISE)) * ROUND_TO_MIN;
 }
 
 /** Statute miles over the sphere of mean radius 6,371.0088 km (haversine). Arithmetic. */

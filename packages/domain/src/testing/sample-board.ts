@@ -6,7 +6,8 @@
 import { type BoardIndex, indexSnapshot } from '../board-index.ts';
 import { withChange } from '../change-rows.ts';
 import { defaultCompanyRules } from '../company-rules.ts';
-import { planPlacement } from '../plan-placement.ts';
+import type { Finding, FindingCode } from '../finding.ts';
+import { type PlannedPlacement, planPlacement } from '../plan-placement.ts';
 import type { Person, Pour, Site, Snapshot, Visit } from '../snapshot.ts';
 import { instantAt } from '../zone.ts';
 
@@ -243,6 +244,29 @@ export function placed(
   atMs = nowMs,
 ): BoardIndex {
   return withChange(index, planPlacement(index, { visitId, crewId, crewStartMs }, atMs).change);
+}
+
+/** What a drop would say and write. */
+export function dropped(
+  index: BoardIndex,
+  visitId: string,
+  crewId: string,
+  crewStartMs: number,
+  atMs = nowMs,
+): PlannedPlacement {
+  return planPlacement(index, { visitId, crewId, crewStartMs }, atMs);
+}
+
+/** The findings of a code; throws when there is none, so that a test cannot pass on nothing. */
+export function findingsWith(planned: PlannedPlacement, code: FindingCode): [Finding, ...Finding[]] {
+  const [first, ...others] = planned.findings.filter((finding) => finding.code === code);
+  if (!first) throw new Error(`No ${code} among: ${codesOf(planned.findings).join(', ')}`);
+  return [first, ...others];
+}
+
+/** Severity and code of each finding, worst first. */
+export function codesOf(findings: readonly Finding[]): string[] {
+  return findings.map((finding) => `${finding.severity} ${finding.code}`);
 }
 
 /** The list with one row changed, found by its id. */
