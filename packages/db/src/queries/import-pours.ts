@@ -64,14 +64,13 @@ export async function forecastPours(
 
 /**
  * Adds pours that wait, each with its slab and visit, and the sites that their rows name in full; fills blanks of
- * pours that are there already by key. Records that refer to nothing must be out already. Returns the visits that
- * are new or look different.
+ * pours that are there already by key. Records that refer to nothing must be out already.
  */
 export async function acceptPours(
   tx: Tx,
   records: readonly PourRecord[],
   context: ImportContext,
-): Promise<ImportCounts & { visitIds: string[] }> {
+): Promise<ImportCounts> {
   const plan = await planPours(tx, records, context);
   await inChunks(plan.newSites, (chunk) =>
     tx.insert(sites).values(
@@ -85,29 +84,21 @@ export async function acceptPours(
       })),
     ),
   );
-  const visitIds = await makePours(tx, plan.toMake);
+  await makePours(tx, plan.toMake);
   for (const { pourId, fill } of plan.toFill) {
     await tx
       .update(pours)
       .set({ ...fill, version: sql`${pours.version} + 1` })
       .where(and(eq(pours.companyId, currentCompany), eq(pours.id, pourId)));
   }
-  const filled = new Set(plan.toFill.map(({ pourId }) => pourId));
-  await inChunks([...filled], async (chunk) => {
-    const rows = await tx
-      .select({ id: visits.id })
-      .from(visits)
-      .where(and(eq(visits.companyId, currentCompany), inArray(visits.pourId, chunk)));
-    visitIds.push(...rows.map((row) => row.id));
-  });
-  return { ...countsOf(plan), visitIds };
+  return countsOf(plan);
 }
 
 function countsOf(plan: PoursPlan): ImportCounts {
   return { created: plan.toMake.length, updated: plan.toFill.length, unchanged: plan.unchanged };
 }
 
-async function makePours(tx: Tx, toMake: readonly NewPour[]): Promise<string[]> {
+async function makePours(tx: Tx, toMake: readonly NewPour[]): Promise<void> {
   const made = toMake.map((pour) => ({ ...pour, pourId: newId(), slabId: newId(), visitId: newId() }));
   const withSlab = made.flatMap(({ slab, ...pour }) => (slab === null ? [] : [{ ...pour, slab }]));
   await inChunks(withSlab, (chunk) =>
@@ -172,7 +163,6 @@ async function makePours(tx: Tx, toMake: readonly NewPour[]): Promise<string[]> 
       })),
     ),
   );
-  return made.map(({ visitId }) => visitId);
 }
 
 type Report = (

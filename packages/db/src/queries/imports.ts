@@ -1,4 +1,4 @@
-import { fieldsOf, type IntakeField, type IntakeKind } from '@strikeboard/domain/intake/fields';
+import { fieldsOf, type IntakeKind } from '@strikeboard/domain/intake/fields';
 import type { ColumnMapping } from '@strikeboard/domain/intake/headings';
 import { and, eq, sql } from 'drizzle-orm';
 import { z } from 'zod';
@@ -7,6 +7,7 @@ import { Conflict, NotFound, StaleVersion } from '../errors.ts';
 import { newId } from '../ids.ts';
 import { currentCompany } from '../tables/columns.ts';
 import { imports } from '../tables/index.ts';
+import { lockBoard, recordBoardChange } from './board-change.ts';
 import { acceptCrews, forecastCrews } from './import-crews.ts';
 import { acceptPeople, forecastPeople } from './import-people.ts';
 import type { ImportBatch, ImportContext, ImportCounts, ImportForecast } from './import-plan.ts';
@@ -171,32 +172,32 @@ export async function acceptImport(
   accept: { importId: string; baseVersion: number; batch: ImportBatch; actorId: string; nowMs: number },
 ): Promise<ImportCounts> {
   const { importId, baseVersion, batch, actorId, nowMs } = accept;
+  await lockBoard(tx);
   const kind = await lockOpen(tx, { importId, baseVersion });
   if (kind !== batch.kind) throw new Conflict('import-kind', { kind });
   const forecast = await resolveReferences(tx, batch, { nowMs });
   const problems = forecast.problems.filter((problem) => problem.severity === 'error');
   if (problems.length > 0) throw new Conflict('unresolved-references', { problems });
-  const { visitIds, ...counts } = await acceptBatch(tx, batch, await contextOf(tx, nowMs));
+  const counts = await acceptBatch(tx, batch, await contextOf(tx, nowMs));
   await tx
     .update(imports)
     .set({ state: 'accepted', result: { ...counts }, acceptedAt: new Date(nowMs), version: baseVersion + 1 })
     .where(isImport(importId));
-  void [visitIds, actorId];
+  // Sites, people and crews have no place in a patch, so its readers read the board anew.
+  if (counts.created + counts.updated > 0) {
+    await recordBoardChange(tx, { kind: 'set-up', actorPersonId: actorId, visitIds: [] });
+  }
   return counts;
 }
 
-async function acceptBatch(
-  tx: Tx,
-  batch: ImportBatch,
-  context: ImportContext,
-): Promise<ImportCounts & { visitIds: string[] }> {
+function acceptBatch(tx: Tx, batch: ImportBatch, context: ImportContext): Promise<ImportCounts> {
   switch (batch.kind) {
     case 'people':
-      return { ...(await acceptPeople(tx, batch.records, context)), visitIds: [] };
+      return acceptPeople(tx, batch.records, context);
     case 'crews':
-      return { ...(await acceptCrews(tx, batch.records, context)), visitIds: [] };
+      return acceptCrews(tx, batch.records, context);
     case 'sites':
-      return { ...(await acceptSites(tx, batch.records, context)), visitIds: [] };
+      return acceptSites(tx, batch.records, context);
     case 'pours':
       return acceptPours(tx, batch.records, context);
   }
