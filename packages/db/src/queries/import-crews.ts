@@ -46,7 +46,8 @@ export async function acceptCrews(
   records: readonly CrewRecord[],
   context: ImportContext,
 ): Promise<ImportCounts> {
-  const { steps } = planCrews(records, await readRoster(tx, context.nowMs));
+  const roster = await readRoster(tx, context.nowMs);
+  const { steps } = planCrews(records, roster);
   const toMake = steps.filter((step) => step.crewId === null);
   const made = await makeCrews(
     tx,
@@ -56,7 +57,7 @@ export async function acceptCrews(
   await joinCrews(
     tx,
     steps.flatMap((step) => step.joining.map((personId) => ({ personId, crewId: crewIdOf(step) }))),
-    context,
+    { roster, context },
   );
   for (const step of steps) {
     if (step.foremanId !== null) await setForeman(tx, { crewId: crewIdOf(step), personId: step.foremanId });

@@ -1,7 +1,7 @@
 import type { PersonRecord } from '@strikeboard/domain/intake/records';
 import { fold } from '@strikeboard/domain/intake/text';
 import { dayInterval, siteDayOf } from '@strikeboard/domain/zone';
-import { and, eq, gt, isNull, or, sql } from 'drizzle-orm';
+import { and, eq, isNull, sql } from 'drizzle-orm';
 import type { Tx } from '../client.ts';
 import { newId } from '../ids.ts';
 import { currentCompany } from '../tables/columns.ts';
@@ -24,8 +24,10 @@ export type CrewRow = typeof crews.$inferSelect;
 export interface Roster {
   members: readonly MemberRow[];
   crewsByKey: ReadonlyMap<string, CrewRow>;
-  /** Crew of each person who is on one; of several, any. */
+  /** Crew of each person who is on one, or is to be. */
   crewOf: ReadonlyMap<string, string>;
+  /** When each person who has been on a crew last left one. */
+  leftMs: ReadonlyMap<string, number>;
 }
 
 /** What becomes of one record. */
@@ -53,18 +55,24 @@ export async function readRoster(tx: Tx, nowMs: number): Promise<Roster> {
   const memberRows = await tx.select().from(members).where(eq(members.companyId, currentCompany));
   const crewRows = await tx.select().from(crews).where(eq(crews.companyId, currentCompany));
   const places = await tx
-    .select({ personId: crewMemberships.personId, crewId: crewMemberships.crewId })
+    .select({
+      personId: crewMemberships.personId,
+      crewId: crewMemberships.crewId,
+      endsAt: crewMemberships.endsAt,
+    })
     .from(crewMemberships)
-    .where(
-      and(
-        eq(crewMemberships.companyId, currentCompany),
-        or(isNull(crewMemberships.endsAt), gt(crewMemberships.endsAt, new Date(nowMs))),
-      ),
-    );
+    .where(eq(crewMemberships.companyId, currentCompany));
+  const crewOf = new Map<string, string>();
+  const leftMs = new Map<string, number>();
+  for (const { personId, crewId, endsAt } of places) {
+    if (endsAt === null || endsAt.getTime() > nowMs) crewOf.set(personId, crewId);
+    else leftMs.set(personId, Math.max(endsAt.getTime(), leftMs.get(personId) ?? 0));
+  }
   return {
     members: memberRows,
     crewsByKey: new Map(crewRows.map((crew) => [crew.naturalKey, crew])),
-    crewOf: new Map(places.map((place) => [place.personId, place.crewId])),
+    crewOf,
+    leftMs,
   };
 }
 
@@ -218,7 +226,7 @@ async function placeOnCrews(
     placed.add(personId);
     joining.push({ personId, crewId: crewIdOf(step.joins) });
   }
-  await joinCrews(tx, joining, context);
+  await joinCrews(tx, joining, { roster, context });
   for (const step of plan.steps) {
     if (!step.leads || step.record.crewName === null) continue;
     const personId = step.member?.personId ?? personOf.get(step) ?? '';
@@ -253,7 +261,7 @@ export async function makeCrews(
 export async function joinCrews(
   tx: Tx,
   joining: readonly { personId: string; crewId: string }[],
-  context: ImportContext,
+  { roster, context }: { roster: Roster; context: ImportContext },
 ): Promise<void> {
   const { startMs } = dayInterval(siteDayOf(context.nowMs, context.zone), context.zone);
   await inChunks(joining, (chunk) =>
@@ -262,8 +270,7 @@ export async function joinCrews(
         companyId: currentCompany,
         id: newId(),
         ...one,
-        startsAt: sql`greatest(${new Date(startMs).toISOString()}::timestamptz, (select max(m.ends_at)
-          from crew_memberships m where m.company_id = ${currentCompany} and m.person_id = ${one.personId}))`,
+        startsAt: new Date(Math.max(startMs, roster.leftMs.get(one.personId) ?? 0)),
       })),
     ),
   );
