@@ -48,8 +48,9 @@ const apiRules: readonly Rule[] = allContracts.map(({ path, method, access }) =>
 }));
 
 /** A path without names in braces wins over one with, part by part: `/me` is never a company's slug. */
-const rules = [...pageRules, ...apiRules].toSorted((a, b) => sortKey(a.path).localeCompare(sortKey(b.path)));
+const rules = [...pageRules, ...apiRules].toSorted((a, b) => (sortKey(a.path) < sortKey(b.path) ? -1 : 1));
 
+/** Sorts by code points, in which `~` comes after every letter; a locale's order puts it before them. */
 function sortKey(path: string): string {
   return path.replaceAll(/\{\w+\}/g, '~');
 }
