@@ -2,6 +2,7 @@
 import { createServer, type IncomingMessage, type ServerResponse } from 'node:http';
 import path from 'node:path';
 import { pathToFileURL } from 'node:url';
+import { ConfigProblem, readNoticesConfig } from '@strikeboard/notices/config';
 import { z } from 'zod';
 import { EnvironmentProblem, env } from './src/env.ts';
 import { closeAll } from './src/lib/server/closing.ts';
@@ -20,6 +21,8 @@ async function loadHandler(): Promise<Handler> {
 
 async function serve(): Promise<void> {
   const { HOST, PORT, TRUSTED_PROXIES, APP_ORIGIN } = env();
+  // Read here too, so that what is missing is said at the start and not at the first drop.
+  readNoticesConfig(process.env);
   const handler = await loadHandler();
   const isHttps = APP_ORIGIN.startsWith('https:');
   const server = createServer((req, res) => {
@@ -57,6 +60,7 @@ async function serve(): Promise<void> {
 try {
   await serve();
 } catch (error) {
-  console.error(error instanceof EnvironmentProblem ? error.message : error);
-  process.exitCode = 1;
+  const isSetting = error instanceof EnvironmentProblem || error instanceof ConfigProblem;
+  console.error(isSetting ? error.message : error);
+  process.exit(1);
 }

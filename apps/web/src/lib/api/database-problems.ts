@@ -13,9 +13,13 @@ const conflictSentences: Readonly<Record<string, string>> = {
   'import-closed': 'This import was accepted or put aside before.',
   'import-kind': 'This file was brought in as another kind.',
   'unresolved-references': 'Some rows name sites or mixes that are not there.',
-  'changed-since': 'The times have changed since you were shown them. Look again before you answer.',
+  'changed-since': 'It has changed since you were shown it. Look at it again first.',
+  'visit-closed': 'This visit is done or called off; it stays where it is.',
+  'not-pencilled': 'Only a pencilled visit can be made firm.',
+  'undone-already': 'This change was undone before.',
+  'time-taken': 'It cannot go back: the time there has been taken since.',
   'key-reused': 'The same Idempotency-Key came with another request.',
-  'not-undoable': 'This change cannot be undone: something it touched has changed since.',
+  'not-undoable': 'This change cannot be undone.',
 };
 
 /** The database's own refusals as problem documents; null for anything unexpected. */

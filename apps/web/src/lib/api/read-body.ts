@@ -15,13 +15,15 @@ export async function readBytes(request: Request, limitBytes: number): Promise<U
   if (Number(request.headers.get('content-length') ?? 0) > limitBytes) throw tooLarge();
   const chunks: Uint8Array[] = [];
   let size = 0;
-  if (request.body) {
-    for await (const chunk of request.body) {
-      size += chunk.byteLength;
-      // A sender may say a small length, or none, and send more.
-      if (size > limitBytes) throw tooLarge();
-      chunks.push(chunk);
+  const reader = request.body?.getReader();
+  for (let read = await reader?.read(); read && !read.done; read = await reader?.read()) {
+    size += read.value.byteLength;
+    // A sender may say a small length, or none, and send more.
+    if (size > limitBytes) {
+      await reader?.cancel();
+      throw tooLarge();
     }
+    chunks.push(read.value);
   }
   return Buffer.concat(chunks);
 }

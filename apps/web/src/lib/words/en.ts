@@ -98,6 +98,10 @@ export const en = {
   allWholeDay: 'all day',
   endBeforeStart: 'The end must come after the start.',
   didNotWork: 'That did not work. Try again.',
+  changedSince: 'The times have changed. Look at them again before you answer.',
+  fromClock: 'From (time)',
+  toClock: 'To (time)',
+  orHours: 'Or only some hours',
 
   linkGone: 'This link does not open anything any more',
   linkGoneWhy: 'It has run out, or the work was changed. Ask the office for a new one.',

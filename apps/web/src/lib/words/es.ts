@@ -111,6 +111,10 @@ export const es: Words = {
   allWholeDay: 'todo el día',
   endBeforeStart: 'El final debe ser después del comienzo.',
   didNotWork: 'No funcionó. Pruebe otra vez.',
+  changedSince: 'Las horas cambiaron. Véalas otra vez antes de contestar.',
+  fromClock: 'Desde (hora)',
+  toClock: 'Hasta (hora)',
+  orHours: 'O solo unas horas',
 
   linkGone: 'Este enlace ya no abre nada',
   linkGoneWhy: 'Ya venció, o el trabajo cambió. Pida uno nuevo a la oficina.',
