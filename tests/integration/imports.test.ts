@@ -30,6 +30,9 @@ import {
 /** Noon on a Friday in Chicago, where the office is; the machine's zone is Tokyo. */
 const NOW_MS = Date.parse('2026-03-06T18:00:00Z');
 
+/** Three to four are usual; the bound allows for a machine that runs other tests, and not for row-by-row writing. */
+const FEW_SECONDS_MS = 20_000;
+
 let db: TestDatabases;
 let company: TestCompany;
 let count = 0;
@@ -510,11 +513,11 @@ describe('pours', () => {
 
     const startMs = performance.now();
     expect(await accept(batch)).toEqual({ created: 5000, updated: 0, unchanged: 0 });
-    expect(performance.now() - startMs).toBeLessThan(10_000);
+    expect(performance.now() - startMs).toBeLessThan(FEW_SECONDS_MS);
     expect(await accept(batch)).toEqual({ created: 0, updated: 0, unchanged: 5000 });
     expect(await inside((tx) => listSites(tx))).toHaveLength(701);
     expect((await readPours()).visits).toHaveLength(5000);
-  });
+  }, 90_000);
 
   it('of 5,000 people are accepted in a few seconds', async () => {
     const table = [
@@ -525,7 +528,7 @@ describe('pours', () => {
     ];
     const startMs = performance.now();
     expect(await accept(people(table))).toEqual({ created: 5000, updated: 0, unchanged: 0 });
-    expect(performance.now() - startMs).toBeLessThan(10_000);
+    expect(performance.now() - startMs).toBeLessThan(FEW_SECONDS_MS);
     expect(await accept(people(table))).toMatchObject({ created: 0, updated: 0, unchanged: 5000 });
-  });
+  }, 90_000);
 });

@@ -239,8 +239,8 @@ describe('plants, mixes and equipment', () => {
 
     const mix = {
       ...{ plantId, code: 'E40', name: 'Exterior 4000', strengthPsi: 4000, slumpIn: '4' },
-      ...{ cement: 'type-i', dischargeLimitMin: 90 },
-    } as const;
+      ...{ cement: 'type-i' as const, dischargeLimitMin: 90 },
+    };
     const mixId = await inside((tx) => createMix(tx, mix));
     await expect(inside((tx) => createMix(tx, mix))).rejects.toMatchObject({ code: 'name-taken' });
     await expect(inside((tx) => createMix(tx, { ...mix, plantId: newId() }))).rejects.toThrow(NotFound);
@@ -248,9 +248,16 @@ describe('plants, mixes and equipment', () => {
     expect(await inside((tx) => listMixes(tx))).toMatchObject([{ id: mixId, strengthPsi: 4500 }]);
 
     const pump = {
-      ...{ kind: 'pump', name: 'Boom 38', boom: true, reachFt: '125', outputYd3PerHour: '90', setUpMin: 30 },
+      ...{
+        kind: 'pump' as const,
+        name: 'Boom 38',
+        boom: true,
+        reachFt: '125',
+        outputYd3PerHour: '90',
+        setUpMin: 30,
+      },
       ...{ washOutMin: 30, travelMin: 30, operatorEmail: null, operatorPhoneE164: null },
-    } as const;
+    };
     const pumpId = await inside((tx) => createEquipment(tx, pump));
     await inside((tx) => editEquipment(tx, { id: pumpId, fields: { setUpMin: 45 } }));
     expect(await inside((tx) => listEquipment(tx))).toMatchObject([
