@@ -24,7 +24,9 @@ export function useBoard(slug: string, from: string, days: number) {
     (patch: BoardPatch) => {
       for (const [key, snapshot] of client.getQueriesData<Snapshot>({ queryKey: ['board', slug] })) {
         if (!snapshot) continue;
-        if (follows(snapshot, patch)) client.setQueryData(key, mergePatch(snapshot, patch));
+        // A change of crews, sites or people has no rows in a patch.
+        if (patch.kind !== 'set-up' && follows(snapshot, patch))
+          client.setQueryData(key, mergePatch(snapshot, patch));
         else void client.invalidateQueries({ queryKey: key });
       }
     },
