@@ -214,7 +214,8 @@ async function runServices(options: {
   };
 }
 
-function usualPrograms(root: string, mode: 'built' | 'dev', port: number) {
+/** What `npm start` runs, by part. */
+export function usualPrograms(root: string, mode: 'built' | 'dev', port: number) {
   const script = (file: string): Program['command'] => [process.execPath, '--import', tsxLoader, file];
   const astro = path.join(root, 'apps/web/node_modules/.bin/astro');
   const dev: Program['command'] = [astro, 'dev', '--host', '127.0.0.1', '--port', String(port)];
