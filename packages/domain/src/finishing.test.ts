@@ -21,6 +21,12 @@ describe('peopleToFinish (arithmetic on the window of finishability, ACI 302.1R)
     ['the same at 90 F, window 1 h', { ...slab, windowH: windowOfFinishabilityH(90) }, 6.667, 7],
     ['no window at all: as many as the placing', { ...slab, windowH: 0 }, 8.889, 9],
     ['an even division is not one more', { ...slab, areaFt2: 3000, windowH: 2 }, 5, 5],
+    [
+      'binary noise (2.0000000000000004) is not a third person',
+      { areaFt2: 272, placingHours: 1, personHoursPerFt2: 1 / 80, windowH: 0.7 },
+      2,
+      2,
+    ],
     ['a stoop still needs one', { ...slab, areaFt2: 20, windowH: 2 }, 0.033, 1],
   ];
   it.each(rows)('%s', (_name, input, exact, people) => {

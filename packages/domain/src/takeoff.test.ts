@@ -168,6 +168,8 @@ describe('bad sections', () => {
       'pointsFt',
     ],
     ['spike out and back', polygon([0, 0], [10, 0], [15, 0], [10, 0], [10, 10], [0, 10]), 'pointsFt'],
+    ['edge back over its neighbour', polygon([0, 0], [10, 0], [10, 10], [10, 5]), 'pointsFt'],
+    ['edge there and back', polygon([0, 0], [10, 0], [0, 0], [5, 5]), 'pointsFt'],
     ['all corners on one line', polygon([0, 0], [10, 0], [5, 0]), 'pointsFt'],
     ['two corners', polygon([0, 0], [10, 0]), 'pointsFt'],
     ['one corner repeated', polygon([1, 1], [1, 1], [1, 1]), 'pointsFt'],

@@ -175,17 +175,19 @@ function polygonAreaFt2(points: Polygon['pointsFt']): number {
   if (edges.length < 3 || edges.length > MAX_POINTS) {
     throw new InputProblem('pointsFt', points, `3 to ${MAX_POINTS} corners`);
   }
+  // Neighbours share a corner. One that folds back onto its neighbour meets the edge beyond it, or leaves no area.
+  const neighbours = (index: number, other: number): boolean =>
+    other === index + 1 || (index === 0 && other === edges.length - 1);
   for (const [index, edge] of edges.entries()) {
     for (const [otherIndex, other] of edges.entries()) {
-      if (otherIndex <= index) continue;
-      const next = otherIndex === index + 1;
-      const around = index === 0 && otherIndex === edges.length - 1;
-      const meets = next ? foldsBack(edge, other) : around ? foldsBack(other, edge) : crosses(edge, other);
-      if (meets) throw new InputProblem('pointsFt', points, 'an outline that does not cross or touch itself');
+      if (otherIndex > index && !neighbours(index, otherIndex) && crosses(edge, other)) {
+        throw new InputProblem('pointsFt', points, 'an outline that does not cross or touch itself');
+      }
     }
   }
   const twice = edges.reduce((sum, { ax, ay, bx, by }) => sum + ax * by - bx * ay, 0);
-  return requirePositive('pointsFt', Math.abs(twice) / 2);
+  if (twice === 0) throw new InputProblem('pointsFt', points, 'an outline that encloses an area');
+  return Math.abs(twice) / 2;
 }
 
 interface Edge {
@@ -217,12 +219,6 @@ function crosses(one: Edge, other: Edge): boolean {
     Math.max(low1, high1) < Math.min(low2, high2) || Math.max(low2, high2) < Math.min(low1, high1);
   if (apart(one.ax, one.bx, other.ax, other.bx) || apart(one.ay, one.by, other.ay, other.by)) return false;
   return a * b <= 0 && c * d <= 0;
-}
-
-/** Whether the next edge runs back over this one. */
-function foldsBack(edge: Edge, next: Edge): boolean {
-  const forward = (edge.bx - edge.ax) * (next.bx - next.ax) + (edge.by - edge.ay) * (next.by - next.ay);
-  return side(edge, next.bx, next.by) === 0 && forward < 0;
 }
 
 function requireFeet(field: string, value: number): number {
