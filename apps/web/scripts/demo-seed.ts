@@ -7,6 +7,7 @@ import { Conflict } from '@strikeboard/db/errors';
 import { acceptImport, saveImport } from '@strikeboard/db/queries/imports';
 import { createCompany } from '@strikeboard/db/queries/set-up';
 import { personForSignIn, setPassword } from '@strikeboard/db/queries/sign-in';
+import type { CompanyRules } from '@strikeboard/domain/company-rules';
 import type { IntakeKind } from '@strikeboard/domain/intake/fields';
 import { roles } from '@strikeboard/domain/vocabulary';
 import { addDays, daysBetween, mondayOf, type SiteDay, siteDayOf } from '@strikeboard/domain/zone';
@@ -21,6 +22,15 @@ const demoFolder = path.join(import.meta.dirname, '../demo');
 /** One password for all demo accounts, printed at every start. The demo holds nobody's data. */
 const DEMO_PASSWORD = 'pour-at-first-light';
 
+/** What the companies have set: where their yard is, and their own experience with power trowels. */
+const demoRules: Readonly<Record<string, Partial<CompanyRules>>> = {
+  'cedar-flat': {
+    yardLatDeg: 40.4103,
+    yardLonDeg: -105.0462,
+    workRatesPersonHoursPerFt2: { broom: 0.008, float: 0.008, trowel: 0.0075, 'hard-trowel': 0.0055 },
+  },
+  'prairie-line': { yardLatDeg: 37.7021, yardLonDeg: -97.3488 },
+};
 const CREWS_SINCE_MS = 100 * 24 * 3_600_000;
 
 const kinds = ['people', 'crews', 'sites', 'pours'] as const satisfies readonly IntakeKind[];

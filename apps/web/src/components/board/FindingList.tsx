@@ -3,6 +3,11 @@ import { SeverityMark } from '../ui/SeverityMark.tsx';
 import { severityWords } from './board-words.ts';
 import { type FindingNames, findingWords } from './finding-words.ts';
 
+/** "14 more people, or another crew": each after the first goes on in the same sentence. */
+function joinedClears(clears: readonly string[]): string {
+  return clears.map((one, at) => (at === 0 ? one : one.charAt(0).toLowerCase() + one.slice(1))).join(', or ');
+}
+
 /** Findings with what, why and what would clear them; each opens to its numbers, formula and source. */
 export function FindingList({
   findings,
@@ -28,7 +33,7 @@ export function FindingList({
             {said.clears.length > 0 && (
               <p className="mt-1 text-sm">
                 <span className="font-medium">Clears it: </span>
-                {said.clears.join(', or ')}.
+                {joinedClears(said.clears)}.
               </p>
             )}
             <details className="mt-1 text-sm">
