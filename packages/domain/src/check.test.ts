@@ -26,26 +26,41 @@ import {
 } from './testing/sample-board.ts';
 
 /** A busier board: lent and busy people, two pumps, a tight plant, follow-ups, prep work, parts of one pour, weather. */
-function busySnapshot(): Snapshot {
+function busySnapshot(lent = true): Snapshot {
   const base = sampleSnapshot();
   const [pump] = base.equipment;
   const [plant] = base.plants;
   if (!pump || !plant) throw new Error('The sample board has a pump and a plant');
   return {
     ...base,
-    memberships: [...base.memberships, { crewId: ids.southCrew, personId: ids.ben, during: base.range }],
+    memberships: lent
+      ? [...base.memberships, { crewId: ids.southCrew, personId: ids.ben, during: base.range }]
+      : base.memberships,
     busy: [{ personId: ids.eli, during: { startMs: at(day, 9), endMs: at(day, 12) } }],
-    equipment: [pump, { ...pump, id: 'boom-2', name: 'Boom 2', outputYd3PerHour: 15 }],
-    plants: [{ ...plant, maxYd3PerHour: 25 }],
+    equipment: lent ? [pump, { ...pump, id: 'boom-2', name: 'Boom 2', outputYd3PerHour: 15 }] : [pump],
+    // The walk's concrete comes from another plant, so that a pump can be all that two pours share.
+    plants: [
+      { ...plant, maxYd3PerHour: 25 },
+      { ...plant, id: 'plant-2' },
+    ],
+    mixes: [...base.mixes, ...base.mixes.map((mix) => ({ ...mix, id: 'mix-2', plantId: 'plant-2' }))],
     pours: [
-      ...changed(base.pours, ids.drivewayPour, { jointing: 'saw-early-entry' }),
+      ...changed(changed(base.pours, ids.drivewayPour, { jointing: 'saw-early-entry' }), ids.walkPour, {
+        mixId: 'mix-2',
+      }),
       samplePour('topping', { slabIds: [ids.drivewaySlab] }),
     ],
     visits: [
       ...base.visits,
       sampleVisit('topping-visit', { pourId: 'topping', partYd3: 6 }),
       sampleVisit('floor-2', { pourId: ids.floorPour, partYd3: 20, siteId: ids.depot }),
-      sampleVisit('saw', { kind: 'saw', causedByVisitId: ids.driveway, plannedMin: 60 }),
+      // Kept at another site, so that only the cause ties it to its pour.
+      sampleVisit('saw', {
+        kind: 'saw',
+        causedByVisitId: ids.driveway,
+        plannedMin: 60,
+        siteId: ids.depot,
+      }),
       sampleVisit('strip', { kind: 'strip', causedByVisitId: ids.driveway, plannedMin: 60 }),
       sampleVisit('prep', { kind: 'prep', siteId: ids.depot }),
     ],
@@ -74,11 +89,11 @@ const visitIds = [
 const moves = fc.array(
   fc.record({
     visitId: fc.constantFrom(...visitIds),
-    crewId: fc.constantFrom<string | null>(ids.northCrew, ids.southCrew, ids.northCrew, null),
-    // Four days, so that a crew's day gets crowded.
-    quarter: fc.integer({ min: 16, max: 96 * 4 }),
+    to: fc.constantFrom(ids.northCrew, ids.southCrew, ids.northCrew, 'off', 'refused'),
+    // Three days, so that a crew's day gets crowded.
+    quarter: fc.integer({ min: 16, max: 96 * 3 }),
   }),
-  { minLength: 1, maxLength: 8 },
+  { minLength: 2, maxLength: 8 },
 );
 
 /** Takes a visit off the board, as the server would write it. */
@@ -94,22 +109,33 @@ function takenOff(index: BoardIndex, visitId: string) {
   };
 }
 
+/** All of a visit's people have said no, and so has its plant. */
+function refused(index: BoardIndex, visitId: string) {
+  const rows = rowsOfVisit(index, visitId);
+  if (!rows) throw new Error(`${visitId} is on the board`);
+  return {
+    ...rows,
+    shifts: rows.shifts.map((row) => ({ ...row, state: 'released' as const })),
+    mixOrders: rows.mixOrders.map((row) => ({ ...row, state: 'refused' as const })),
+  };
+}
+
 describe('incremental', () => {
   test('findings after each change equal those of the whole board', () => {
     fc.assert(
-      fc.property(moves, (list) => {
-        let snapshot = busySnapshot();
+      fc.property(moves, fc.boolean(), (list, lent) => {
+        let snapshot = busySnapshot(lent);
         let index = indexSnapshot(snapshot);
         let findings = check(index, nowMs);
-        for (const { visitId, crewId, quarter } of list) {
+        for (const { visitId, to, quarter } of list) {
           const before = index;
           let touched = [visitId];
-          if (crewId === null) {
-            const rows = takenOff(index, visitId);
+          if (to === 'off' || to === 'refused') {
+            const rows = to === 'off' ? takenOff(index, visitId) : refused(index, visitId);
             index = withVisitRows(index, rows);
             snapshot = snapshotWithVisitRows(snapshot, rows);
           } else {
-            const placement = { visitId, crewId, crewStartMs: at('2026-06-08', 0) + quarter * 900_000 };
+            const placement = { visitId, crewId: to, crewStartMs: at('2026-06-08', 0) + quarter * 900_000 };
             const { change } = planPlacement(index, placement, nowMs);
             touched = visitsOfChange(change);
             snapshot = snapshotWithChange(snapshot, index, change);
@@ -121,8 +147,42 @@ describe('incremental', () => {
           expect(findings).toEqual(check(anew, nowMs));
         }
       }),
-      { numRuns: 120 },
+      { numRuns: 200 },
     );
+  });
+
+  test.each([
+    ['a pump that comes free', 'pump-overlap', () => busySnapshot(false)],
+    [
+      'a plant whose refused order is still wanted',
+      'plant-over-capacity',
+      () => {
+        const snapshot = busySnapshot();
+        const pours = snapshot.pours.map((pour) => ({
+          ...pour,
+          mixId: ids.mix,
+          placingMethod: 'chute' as const,
+        }));
+        return { ...snapshot, pours: changed(pours, ids.floorPour, { placingRateYd3PerHour: 20 }) };
+      },
+    ],
+  ] as const)('%s clears the visit that stands elsewhere', (_name, code, snapshotOf) => {
+    const base = placed(indexSnapshot(snapshotOf()), ids.floor, ids.southCrew, at(day, 6));
+    const stands = placed(base, ids.walk, ids.northCrew, at(day, 6));
+    const rows = rowsOfVisit(stands, ids.walk);
+    if (!rows) throw new Error('The walk stands');
+    const before = withVisitRows(stands, {
+      ...rows,
+      mixOrders: rows.mixOrders.map((row) => ({ ...row, state: 'refused' as const })),
+    });
+    const previous = check(before, nowMs);
+    const has = (findings: typeof previous) =>
+      (findings.get(ids.walk) ?? []).some((one) => one.code === code);
+    expect(has(previous)).toBe(true);
+    const after = withVisitRows(before, takenOff(before, ids.floor));
+    const next = recheck({ before, after, previous, visitIds: [ids.floor], nowMs });
+    expect(has(next)).toBe(false);
+    expect(next).toEqual(check(after, nowMs));
   });
 
   test('leaves lists alone that a change cannot touch', () => {

@@ -143,6 +143,15 @@ describe('other visits at the site', () => {
     else expect(codes).toContain(expected);
   });
 
+  test('a pour says nothing of its own follow-up, which moves with it', () => {
+    const visits = [...base.visits, sampleVisit('strip', { kind: 'strip', causedByVisitId: ids.driveway })];
+    const index = placed(withDriveway({ visits }), 'strip', ids.southCrew, at(day, 20));
+    const pour = dropped(index, ids.driveway, ids.northCrew, at(day, 6));
+    expect(codesOf(pour.findings).some((code) => code.endsWith('cure-blackout'))).toBe(false);
+    const strip = dropped(index, 'strip', ids.southCrew, at(day, 20));
+    expect(codesOf(strip.findings)).toContain('caution cure-blackout');
+  });
+
   test('another site’s slab is nobody’s business', () => {
     const planned = dropped(withDriveway(), ids.floor, ids.southCrew, at(day, 15));
     expect(codesOf(planned.findings).filter((code) => /cure|green/.test(code))).toEqual([]);

@@ -71,9 +71,16 @@ describe('travel between the visits of a crew', () => {
 
   test('a night’s second visit after midnight does not', () => {
     const night = placed(sampleIndex(), ids.driveway, ids.northCrew, at(day, 16));
-    // The driveway ends at 0:15; the saw cut or floor that follows at 1:00 is still that night's work.
+    // The driveway ends at 0:15; what follows at 1:00 is still that night's work.
     const planned = dropped(night, ids.floor, ids.northCrew, at('2026-06-10', 1));
     expect(planned.change.shifts[0]?.held.startMs).toBe(at('2026-06-10', 0, 30));
+    // It ends at 22:15, on the day before.
+    const evening = placed(sampleIndex(), ids.driveway, ids.northCrew, at(day, 14));
+    const next = dropped(evening, ids.floor, ids.northCrew, at('2026-06-10', 1));
+    expect(next.change.shifts[0]?.held.startMs).toBe(at('2026-06-10', 0, 30));
+    // After the night's rest of 8 h the crew comes from home.
+    const rested = dropped(evening, ids.floor, ids.northCrew, at('2026-06-10', 6, 15));
+    expect(rested.change.shifts[0]?.held).toEqual(rested.change.visit.during);
   });
 });
 
