@@ -134,6 +134,7 @@ async function makeCompany(owner: Database, company: DemoCompany, email: string)
   try {
     return await createCompany(owner, {
       ...company,
+      rules: demoRules[company.slug] ?? {},
       owner: { name, email, phoneE164: null, language: 'en' },
     });
   } catch (error) {
