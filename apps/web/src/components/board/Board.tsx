@@ -50,6 +50,7 @@ export interface BoardProps {
 
 const dayChoices = [1, 3, 7, 14] as const;
 const MINUTE_MS = 60_000;
+const PHONE_PX = 640;
 const noFindings: readonly Finding[] = [];
 
 /** The dispatcher's board. */
@@ -83,8 +84,12 @@ function useWidth() {
 }
 
 function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }: BoardProps) {
-  const [from, setFrom] = useState(start.from);
-  const [days, setDays] = useState(start.days);
+  // A phone shows one day unless the address asks for more.
+  const [phone] = useState(
+    () => window.innerWidth < PHONE_PX && !new URLSearchParams(window.location.search).has('days'),
+  );
+  const [from, setFrom] = useState(() => (phone ? siteDayOf(Date.now(), zone) : start.from));
+  const [days, setDays] = useState(phone ? 1 : start.days);
   const [heldId, setHeldId] = useState<string | null>(null);
   const [spot, setSpot] = useState<Spot>(null);
   const [openId, setOpenId] = useState<string | null>(null);
@@ -111,7 +116,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
     window.history.replaceState(null, '', url);
   }, [from, days]);
 
-  const headWidthPx = widthPx > 0 && widthPx < 640 ? 96 : 168;
+  const headWidthPx = widthPx > 0 && widthPx < PHONE_PX ? 96 : 168;
   const scale: Scale = useMemo(
     () => ({
       from,
