@@ -27,7 +27,7 @@ export function YardChart({ sheet }: { sheet: YardSheetView }) {
   return (
     <div className="h-80 w-full" aria-hidden="true">
       <ResponsiveContainer width="100%" height="100%" initialDimension={{ width: 600, height: 320 }}>
-        <BarChart data={rows} margin={{ top: 8, right: 8, bottom: 0, left: 0 }}>
+        <BarChart data={rows} margin={{ top: 22, right: 8, bottom: 0, left: 0 }}>
           <CartesianGrid vertical={false} stroke="var(--line)" />
           <XAxis dataKey="week" stroke="var(--ink-soft)" tick={{ fontSize: 12, fill: 'var(--ink-soft)' }} />
           <YAxis
