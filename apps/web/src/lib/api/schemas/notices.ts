@@ -16,6 +16,7 @@ export const noticeSchema = z
     /** The exact words. */
     body: z.string(),
     state: z.enum(noticeStates),
+    errorCode: z.string().nullable(),
     /** What went wrong, in a sentence; null: nothing. */
     error: z.string().nullable(),
     attempts: z.number(),

@@ -1,0 +1,125 @@
+import { NotFound } from '@strikeboard/db/errors';
+import { createSite, editSite, endSite, listSites } from '@strikeboard/db/queries/set-up-sites';
+import { isZone } from '@strikeboard/domain/zone';
+import { z } from 'zod';
+import {
+  blankable,
+  clockMin,
+  clockText,
+  decimal,
+  type FormField,
+  type FormValues,
+  formObject,
+  orNull,
+  problemsOf,
+  requiredText,
+  type SetUpKind,
+} from './form.ts';
+
+const schema = z
+  .object({
+    name: requiredText(120),
+    address: requiredText(300),
+    zone: z.string('a time zone').refine(isZone, 'a time zone such as America/Denver'),
+    latDeg: orNull(decimal(-90, 90).transform(Number)),
+    lonDeg: orNull(decimal(-180, 180).transform(Number)),
+    permittedFromMin: orNull(clockMin),
+    permittedUntilMin: orNull(clockMin),
+    customerName: blankable(120),
+    accessNotes: blankable(1000),
+  })
+  .refine(({ latDeg, lonDeg }) => (latDeg === null) === (lonDeg === null), {
+    path: ['lonDeg'],
+    message: 'both latitude and longitude, or neither',
+  });
+
+const fields: FormField[] = [
+  { name: 'name', label: 'Name', kind: 'text' },
+  { name: 'customerName', label: 'Customer', kind: 'text', optional: true, half: true },
+  {
+    name: 'address',
+    label: 'Address',
+    kind: 'text',
+    hint: 'Street, town, state, zip: as crews will look for it.',
+  },
+  { name: 'zone', label: 'Time zone', kind: 'zone' },
+  {
+    name: 'latDeg',
+    label: 'Latitude',
+    kind: 'decimal',
+    optional: true,
+    hint: 'With it the drive and the daylight are known.',
+  },
+  { name: 'lonDeg', label: 'Longitude', kind: 'decimal', optional: true, half: true },
+  { name: 'permittedFromMin', label: 'Concrete permitted from', kind: 'clock', optional: true },
+  {
+    name: 'permittedUntilMin',
+    label: 'until',
+    kind: 'clock',
+    optional: true,
+    half: true,
+    hint: 'Earlier than from: until the next day.',
+  },
+  {
+    name: 'accessNotes',
+    label: 'Access',
+    kind: 'lines',
+    optional: true,
+    hint: 'Gates, dogs, where trucks enter. Crews read it.',
+  },
+];
+
+export const sitesKind: SetUpKind = {
+  title: 'Sites',
+  one: 'site',
+  about: 'Where concrete goes.',
+  headings: ['Site', 'Address', 'Customer', 'Permitted', 'Time zone'],
+  endWord: 'Close the site',
+  rows: async (tx) =>
+    (await listSites(tx)).map((site) => ({
+      id: site.id,
+      cells: [
+        site.name,
+        site.address,
+        site.customerName ?? '',
+        site.permittedFromMin === null && site.permittedUntilMin === null
+          ? ''
+          : `${clockText(site.permittedFromMin) || '0:00'} – ${clockText(site.permittedUntilMin) || '24:00'}`,
+        site.zone,
+      ],
+    })),
+  fields: async () => fields,
+  values: async (tx, id, { zone }): Promise<FormValues> => {
+    if (id === null) return { zone };
+    const site = (await listSites(tx)).find((one) => one.id === id);
+    if (!site) throw new NotFound('site', id);
+    return {
+      name: site.name,
+      customerName: site.customerName ?? '',
+      address: site.address,
+      zone: site.zone,
+      latDeg: String(site.latDeg ?? ''),
+      lonDeg: String(site.lonDeg ?? ''),
+      permittedFromMin: clockText(site.permittedFromMin),
+      permittedUntilMin: clockText(site.permittedUntilMin),
+      accessNotes: site.accessNotes ?? '',
+    };
+  },
+  save: async (tx, id, form) => {
+    const parsed = schema.safeParse(formObject(form));
+    if (!parsed.success) return problemsOf(parsed.error);
+    const { permittedFromMin, permittedUntilMin, ...rest } = parsed.data;
+    // An end before the start is the next day's: the row keeps it past 1440.
+    const untilMin =
+      permittedUntilMin !== null && permittedUntilMin <= (permittedFromMin ?? 0)
+        ? permittedUntilMin + 1440
+        : permittedUntilMin;
+    const site = { ...rest, permittedFromMin, permittedUntilMin: untilMin };
+    if (id === null) await createSite(tx, site);
+    else await editSite(tx, { siteId: id, fields: site });
+    return {};
+  },
+  end: async (tx, id, { nowMs }) => {
+    await endSite(tx, { siteId: id, nowMs });
+  },
+};
