@@ -154,7 +154,7 @@ describe('incremental', () => {
   test.each([
     ['a pump that comes free', 'pump-overlap', () => busySnapshot(false)],
     [
-      'a plant whose refused order is still wanted',
+      'a plant from which nothing is ordered yet',
       'plant-over-capacity',
       () => {
         const snapshot = busySnapshot();
@@ -171,10 +171,7 @@ describe('incremental', () => {
     const stands = placed(base, ids.walk, ids.northCrew, at(day, 6));
     const rows = rowsOfVisit(stands, ids.walk);
     if (!rows) throw new Error('The walk stands');
-    const before = withVisitRows(stands, {
-      ...rows,
-      mixOrders: rows.mixOrders.map((row) => ({ ...row, state: 'refused' as const })),
-    });
+    const before = withVisitRows(stands, { ...rows, mixOrders: [] });
     const previous = check(before, nowMs);
     const has = (findings: typeof previous) =>
       (findings.get(ids.walk) ?? []).some((one) => one.code === code);
@@ -182,6 +179,32 @@ describe('incremental', () => {
     const after = withVisitRows(before, takenOff(before, ids.floor));
     const next = recheck({ before, after, previous, visitIds: [ids.floor], nowMs });
     expect(has(next)).toBe(false);
+    expect(next).toEqual(check(after, nowMs));
+  });
+
+  test('a crew split over two sites is one crew, though nobody is shared', () => {
+    let before = placed(indexSnapshot(busySnapshot(false)), ids.driveway, ids.northCrew, at(day, 6));
+    before = withVisitRows(before, refused(before, ids.driveway));
+    before = placed(before, 'prep', ids.northCrew, at(day, 8));
+    const previous = check(before, nowMs);
+    expect(codesOf(previous.get(ids.driveway) ?? [])).toContain('caution crew-overlap');
+    const after = withVisitRows(before, takenOff(before, 'prep'));
+    const next = recheck({ before, after, previous, visitIds: ['prep'], nowMs });
+    expect(codesOf(next.get(ids.driveway) ?? [])).not.toContain('caution crew-overlap');
+    expect(next).toEqual(check(after, nowMs));
+  });
+
+  test('a saw visit elsewhere hangs on the pour that caused it', () => {
+    let before = placed(indexSnapshot(busySnapshot(false)), ids.driveway, ids.northCrew, at(day, 6));
+    before = placed(before, 'saw', ids.southCrew, at(day, 10));
+    const rows = rowsOfVisit(before, 'saw');
+    if (!rows) throw new Error('The saw visit stands');
+    before = withVisitRows(before, { ...rows, visit: { ...rows.visit, window: null } });
+    const previous = check(before, nowMs);
+    expect(codesOf(previous.get('saw') ?? [])).toContain('caution follow-up-unmanned');
+    const after = withVisitRows(before, takenOff(before, ids.driveway));
+    const next = recheck({ before, after, previous, visitIds: [ids.driveway], nowMs });
+    expect(next.get('saw')).toEqual([]);
     expect(next).toEqual(check(after, nowMs));
   });
 

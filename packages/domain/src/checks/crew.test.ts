@@ -13,6 +13,7 @@ import {
   placed,
   sampleIndex,
   sampleSnapshot,
+  sampleVisit,
 } from '../testing/sample-board.ts';
 
 const base = sampleSnapshot();
@@ -92,6 +93,32 @@ describe('a person taken elsewhere', () => {
       peopleNeeded: 3,
       peoplePresent: 2,
     });
+  });
+
+  test.each([
+    // The depot is 30 min away. Ada's work there ends at 11:00.
+    ['with time to drive over', 30, false],
+    ['without', 29, true],
+  ] as const)('by work that ends before, %s', (_name, gapMin, leftOff) => {
+    const during = { startMs: at(day, 9), endMs: at(day, 11) };
+    const visits = [
+      ...base.visits,
+      sampleVisit('prep', { kind: 'prep', state: 'firm', crewId: ids.southCrew, siteId: ids.depot, during }),
+    ];
+    const shift = { id: 's', visitId: 'prep', personId: ids.ada, during, held: during };
+    const shifts = [{ ...shift, state: 'held' as const, answer: 'none' as const, told: false }];
+    const startMs = at(day, 11) + gapMin * 60_000;
+    const planned = dropped(sampleIndex({ visits, shifts }), ids.driveway, ids.northCrew, startMs);
+    expect(planned.change.shifts.some((row) => row.personId === ids.ada)).toBe(!leftOff);
+    if (leftOff) expect(findingsWith(planned, 'person-overlap')[0].facts).toMatchObject({ travelOnly: true });
+  });
+
+  test('while the crew travels is taken too', () => {
+    // From the driveway at 14:15 the crew takes until 14:45 to the depot.
+    const busy = [{ personId: ids.cal, during: { startMs: at(day, 14, 15), endMs: at(day, 14, 40) } }];
+    const index = placed(sampleIndex({ busy }), ids.driveway, ids.northCrew, at(day, 6));
+    const planned = dropped(index, ids.floor, ids.northCrew, at(day, 14, 45));
+    expect(findingsWith(planned, 'person-overlap')[0].against).toEqual([{ kind: 'person', id: ids.cal }]);
   });
 
   test('in another company is busy, and nothing more is said', () => {

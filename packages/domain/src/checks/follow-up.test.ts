@@ -55,6 +55,18 @@ describe('a saw window that nobody mans', () => {
       );
   });
 
+  test('a saw visit that stands outside the window mans nothing', () => {
+    let index = placed(withSaw(), ids.driveway, ids.northCrew, at(day, 6));
+    index = placed(index, 'saw', ids.southCrew, at(day, 16));
+    const unmanned = check(index, nowMs)
+      .get(ids.driveway)
+      ?.find((one) => one.code === 'follow-up-unmanned');
+    expect(unmanned).toMatchObject({
+      facts: { standsOutside: true },
+      against: [{ kind: 'visit', id: 'saw' }],
+    });
+  });
+
   test.each([
     ['as it opens', at(day, 17, 45), false],
     ['a minute before', at(day, 17, 44), true],
