@@ -24,7 +24,7 @@ import { answersOf } from './board-data.ts';
 import { severityWords, words } from './board-words.ts';
 import { DayHeads } from './DayHeads.tsx';
 import { DropDialog } from './DropDialog.tsx';
-import { namesOf } from './finding-words.ts';
+import { findingWords, namesOf } from './finding-words.ts';
 import { type BoardGeometry, coordinatesFor, type Spot, slotUnder } from './keyboard.ts';
 import { Lane, layLane, ROW_HEIGHT_PX } from './Lane.tsx';
 import { NewPour } from './NewPour.tsx';
@@ -267,11 +267,14 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
     void moves.place({ visitId, crewId: next.crewId, crewStartMs });
   };
 
+  const held = heldId === null ? undefined : snapshot?.visits.find((visit) => visit.id === heldId);
+  const heldState = held?.state;
+
   // Spoken as the card goes over a lane and a slot.
   useEffect(() => {
     if (heldId === null) return;
     if (preview === null) {
-      setSaid(words.overWaiting);
+      if (heldState !== 'waiting') setSaid(words.overWaiting);
       return;
     }
     const crew = index?.crews.get(preview.crewId)?.name ?? '';
@@ -282,12 +285,11 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
       words.over(
         crew,
         whenText(preview.crewStartMs, preview.zone),
-        first ? `${verdict}, ${first.code.replaceAll('-', ' ')}` : verdict,
+        first ? `${verdict}: ${findingWords(first, names, preview.zone).what}` : verdict,
       ),
     );
-  }, [heldId, preview, index]);
+  }, [heldId, heldState, preview, index, names]);
 
-  const held = heldId === null ? undefined : snapshot?.visits.find((visit) => visit.id === heldId);
   const heldWidthPx = preview
     ? xOf(preview.change.visit.during.endMs, preview.zone, scale) -
       xOf(preview.change.visit.during.startMs, preview.zone, scale)
@@ -362,11 +364,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
         {said}
       </p>
       <div className="flex min-h-0 grow">
-        <div
-          ref={scroller}
-          className="min-h-0 min-w-0 grow overflow-auto"
-          style={{ height: 'calc(100dvh - 7.25rem)' }}
-        >
+        <div ref={scroller} className="min-h-0 min-w-0 grow overflow-auto">
           <DndContext
             sensors={sensors}
             onDragStart={(event) => onDragStart(String(event.active.id))}

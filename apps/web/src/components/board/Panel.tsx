@@ -99,7 +99,6 @@ export function Panel({
     <aside
       aria-labelledby="panel-title"
       className="fixed inset-0 z-30 flex flex-col border-l border-line-strong bg-sheet md:static md:z-auto md:w-[25rem] md:shrink-0"
-      style={{ maxHeight: '100dvh' }}
       onKeyDown={(event) => {
         if (event.key === 'Escape') onClose();
       }}

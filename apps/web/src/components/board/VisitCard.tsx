@@ -58,7 +58,7 @@ export const CardFace = memo(function CardFace({
         ? 'bg-concrete border-line-strong'
         : 'bg-sheet border-settled';
   const start = visit.during && formatClock(visit.during.startMs, site.zone, 'en');
-  const narrow = widthPx !== null && widthPx < 72;
+  const narrow = widthPx !== null && widthPx < 112;
   return (
     <div
       className={`relative h-full overflow-hidden rounded-card border-2 text-left text-[0.75rem] leading-[1.15] ${tone} ${
