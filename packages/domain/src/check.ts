@@ -3,12 +3,14 @@
 import { type BoardIndex, isActive, isPlaced, type PlacedVisit } from './board-index.ts';
 import { findingsOf } from './checks/run.ts';
 import type { Finding } from './finding.ts';
-import { MS_PER_HOUR } from './interval.ts';
+import { MS_PER_HOUR, MS_PER_MIN } from './interval.ts';
 import { basisOf, standingPlan } from './plan.ts';
 import { needsPump } from './plan-pump.ts';
 
-/** Visits further apart than this share no crew's day, plant's hour or pump. */
+/** Visits of a crew further apart than this share neither a day nor the way between them. */
 const NEAR_MS = 96 * MS_PER_HOUR;
+/** A plant's sliding hour, and as much to spare. */
+const PLANT_MS = 2 * MS_PER_HOUR;
 /** A workweek with a day at either end. */
 const WEEK_MS = 9 * 24 * MS_PER_HOUR;
 
@@ -74,6 +76,7 @@ interface Trace {
   readonly people: ReadonlySet<string>;
   readonly plants: ReadonlySet<string>;
   readonly takesPump: boolean;
+  readonly leadMs: number;
 }
 
 function traceOf(index: BoardIndex, visitId: string): Trace | null {
@@ -94,6 +97,7 @@ function traceOf(index: BoardIndex, visitId: string): Trace | null {
     people: new Set(shifts.map((row) => row.personId)),
     plants: new Set(orders.map((row) => row.plantId)),
     takesPump: bookings.length > 0,
+    leadMs: leadMs(index, visitId),
   };
 }
 
@@ -108,7 +112,17 @@ function isTouched(index: BoardIndex, visit: PlacedVisit, trace: Trace): boolean
   }
   if (apartMs > NEAR_MS) return false;
   if (visit.crewId === trace.crewId) return true;
-  return visit.kind === 'pour' && sharesSupply(index, visit, trace);
+  if (visit.kind !== 'pour' || apartMs > PLANT_MS + trace.leadMs + leadMs(index, visit.id)) return false;
+  return sharesSupply(index, visit, trace);
+}
+
+/** How long before and after a visit its concrete is batched and its pump is held, at most. */
+function leadMs(index: BoardIndex, visitId: string): number {
+  const haulMin = basisOf(index, visitId).pour?.shape.haulMin ?? 0;
+  let minutes = index.rules.batchAndCheckMin + haulMin;
+  for (const pump of index.pumps)
+    minutes = Math.max(minutes, pump.travelMin + pump.setUpMin + pump.washOutMin);
+  return minutes * MS_PER_MIN;
 }
 
 function sharesSupply(index: BoardIndex, visit: PlacedVisit, trace: Trace): boolean {

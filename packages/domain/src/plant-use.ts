@@ -1,9 +1,10 @@
 /** What a plant is asked to make, over time. Shared by the check of its limit and by the board's rail. */
 
 import type { BoardIndex } from './board-index.ts';
+import type { CompanyRules } from './company-rules.ts';
 import { type Interval, MS_PER_HOUR, MS_PER_MIN } from './interval.ts';
 import { batchAtMs, loadsForOrder } from './loads.ts';
-import type { MixOrder, Plant } from './snapshot.ts';
+import type { MixOrder, Plant, Site } from './snapshot.ts';
 import { travelMin } from './travel.ts';
 
 /** Yards that one order takes evenly from a plant during an interval, at batching time. */
@@ -22,13 +23,30 @@ export interface PeakHour {
 
 type OrderTimes = Pick<MixOrder, 'visitId' | 'orderedYd3' | 'loadYd3' | 'spacingMin' | 'during'>;
 
+interface KnownDraws {
+  readonly plant: Plant;
+  readonly site: Site | null;
+  readonly rules: CompanyRules;
+  readonly draws: readonly PlantDraw[];
+}
+const known = new WeakMap<OrderTimes, KnownDraws>();
+
+/** The draws of an order that stands, kept with its row: a plant has hundreds, and every check asks for those near. */
+export function drawsOfRow(index: BoardIndex, plant: Plant, order: MixOrder): readonly PlantDraw[] {
+  const site = siteOfOrder(index, order);
+  const kept = known.get(order);
+  if (kept && kept.plant === plant && kept.site === site && kept.rules === index.rules) return kept.draws;
+  const draws = drawsOfOrder(index, plant, order);
+  known.set(order, { plant, site, rules: index.rules, draws });
+  return draws;
+}
+
 /**
  * An order as the plant sees it: each load is spread over the spacing that follows it, from the instant it is
  * batched. 9 yd3 every 18 min are 30 yd3/h, although four loads begin in some hours. Arithmetic.
  */
 export function drawsOfOrder(index: BoardIndex, plant: Plant, order: OrderTimes): PlantDraw[] {
-  const visit = index.visits.get(order.visitId);
-  const site = visit ? (index.sites.get(visit.siteId) ?? null) : null;
+  const site = siteOfOrder(index, order);
   const startMs = batchAtMs(order.during.startMs, {
     batchAndCheckMin: index.rules.batchAndCheckMin,
     travelMin: travelMin(plant, site, index.rules),
@@ -52,7 +70,7 @@ export function drawsOnPlant(index: BoardIndex, plantId: string): PlantDraw[] {
   const plant = index.plants.get(plantId);
   if (!plant) return [];
   return (index.ordersByPlant.get(plantId) ?? [])
-    .flatMap((order) => drawsOfOrder(index, plant, order))
+    .flatMap((order) => drawsOfRow(index, plant, order))
     .sort((a, b) => a.startMs - b.startMs);
 }
 
@@ -77,4 +95,9 @@ export function peakHour(draws: readonly PlantDraw[], visitId: string): PeakHour
     }
   }
   return peak;
+}
+
+function siteOfOrder(index: BoardIndex, order: OrderTimes): Site | null {
+  const visit = index.visits.get(order.visitId);
+  return visit ? (index.sites.get(visit.siteId) ?? null) : null;
 }

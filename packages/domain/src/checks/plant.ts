@@ -2,7 +2,7 @@ import type { Clearing } from '../finding.ts';
 import { MS_PER_HOUR, MS_PER_MIN, overlaps } from '../interval.ts';
 import { batchAtMs } from '../loads.ts';
 import type { Plan } from '../plan.ts';
-import { drawsOfOrder, type PlantDraw, peakHour } from '../plant-use.ts';
+import { drawsOfOrder, drawsOfRow, type PlantDraw, peakHour } from '../plant-use.ts';
 import type { Plant } from '../snapshot.ts';
 import { addDays, instantAt, minuteOfDay, type SiteDay, siteDayOf, weekdayOf } from '../zone.ts';
 import { type Check, sources, subject, tenthBelow, visitSubject } from './report.ts';
@@ -83,7 +83,7 @@ export const plantCapacity: Check = (plan, report) => {
   for (const other of index.ordersByPlant.get(plant.id) ?? []) {
     if (other.during.startMs >= look.endMs) break;
     if (other.visitId === visitId || !overlaps(other.during, look)) continue;
-    for (const draw of drawsOfOrder(index, plant, other)) {
+    for (const draw of drawsOfRow(index, plant, other)) {
       if (!overlaps(draw, reach)) continue;
       draws.push(draw);
       most += draw.yd3PerHour;
