@@ -7,9 +7,11 @@ import {
   type Import,
   mapImport,
   readImport,
+  SHEET_LIMIT_BYTES,
   uploadImport,
 } from '../../lib/api/schemas/imports.ts';
 import { ApiProblem, call, newKey } from '../../lib/client/api.ts';
+import { sheetSentence } from '../../lib/sheets/sheet-problem.ts';
 import { Button } from '../ui/Button.tsx';
 import { ChooseFile } from './ChooseFile.tsx';
 import { kindWords } from './import-words.ts';
@@ -65,6 +67,10 @@ export function Importer({ slug, id }: { slug: string; id: string | null }) {
   }, []);
 
   const upload = (chosen: File, chosenKind: IntakeKind, sheet?: string) => {
+    if (chosen.size > SHEET_LIMIT_BYTES) {
+      setProblem(sheetSentence({ code: 'too-big', limitMb: SHEET_LIMIT_BYTES / 1024 / 1024 }, 'en'));
+      return;
+    }
     file.current = chosen;
     const before = step;
     setStep({ name: 'reading', fileName: chosen.name });

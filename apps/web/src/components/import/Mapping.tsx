@@ -31,21 +31,23 @@ export function Mapping({
         )}
       </h3>
       <div className="overflow-x-auto">
-        <table className="table min-w-[40rem]">
+        <table className="table sm:min-w-[40rem]">
           <thead>
             <tr>
               <th scope="col">In the file</th>
-              <th scope="col">First rows</th>
+              <th scope="col" className="hidden sm:table-cell">
+                First rows
+              </th>
               <th scope="col">Is</th>
             </tr>
           </thead>
           <tbody>
             {shown.mapping.map((one) => (
               <tr key={one.column}>
-                <th scope="row" className="!text-base !text-ink">
+                <th scope="row">
                   {one.heading || <span className="font-normal text-ink-faint">no heading</span>}
                 </th>
-                <td className="max-w-80 truncate text-ink-soft">
+                <td className="hidden max-w-80 truncate text-ink-soft sm:table-cell">
                   {shown.sample
                     .map((row) => row[one.column] ?? '')
                     .filter((cell) => cell.trim() !== '')
@@ -53,7 +55,7 @@ export function Mapping({
                     .join(' · ')}
                 </td>
                 <td>
-                  <span className="flex items-center gap-2">
+                  <span className="flex flex-wrap items-center gap-2">
                     <select
                       className="input max-w-56"
                       aria-label={`What "${one.heading || `column ${one.column + 1}`}" is`}

@@ -1,15 +1,5 @@
 import { formatDay } from '@strikeboard/domain/zone';
-import {
-  Bar,
-  BarChart,
-  CartesianGrid,
-  Legend,
-  ReferenceLine,
-  ResponsiveContainer,
-  Tooltip,
-  XAxis,
-  YAxis,
-} from 'recharts';
+import { Bar, BarChart, CartesianGrid, Legend, ResponsiveContainer, Tooltip, XAxis, YAxis } from 'recharts';
 import type { YardSheetView } from '../../lib/api/schemas/yard-sheet.ts';
 
 /** Shades that differ in lightness as well as in hue, so that print and colour-blind eyes tell them apart. */
@@ -18,12 +8,11 @@ const fills = ['#22374d', '#c18a2e', '#7f8b93', '#5c7f67', '#8a4b3c', '#b9c3ca',
 /** Yards ordered per week, a bar per week stacked by crew. The table beside it says the same in numbers. */
 export function YardChart({ sheet }: { sheet: YardSheetView }) {
   const rows = sheet.weeks.map((week, index) => ({
-    week: formatDay(week.startsOn, 'en').slice(4),
+    week: week.when === 'current' ? 'This week' : formatDay(week.startsOn, 'en').slice(4),
     ...Object.fromEntries(
       sheet.byCrew.map((crew) => [crew.crewId, Number(crew.weeks[index]?.orderedYd3 ?? 0)]),
     ),
   }));
-  const current = sheet.weeks.findIndex(({ when }) => when === 'current');
   return (
     <div className="h-80 w-full" aria-hidden="true">
       <ResponsiveContainer width="100%" height="100%" initialDimension={{ width: 600, height: 320 }}>
@@ -31,10 +20,10 @@ export function YardChart({ sheet }: { sheet: YardSheetView }) {
           <CartesianGrid vertical={false} stroke="var(--line)" />
           <XAxis dataKey="week" stroke="var(--ink-soft)" tick={{ fontSize: 12, fill: 'var(--ink-soft)' }} />
           <YAxis
-            width={48}
+            width={72}
+            tickFormatter={(value: number) => `${value.toLocaleString('en-US')} yd³`}
             stroke="var(--ink-soft)"
             tick={{ fontSize: 12, fill: 'var(--ink-soft)' }}
-            label={{ value: 'yd³', position: 'insideTopLeft', fontSize: 12, fill: 'var(--ink-soft)' }}
           />
           <Tooltip
             cursor={{ fill: 'var(--concrete)' }}
@@ -45,15 +34,11 @@ export function YardChart({ sheet }: { sheet: YardSheetView }) {
             }}
             formatter={(value, name) => [`${value} yd³`, name]}
           />
-          <Legend wrapperStyle={{ fontSize: 13 }} />
-          {current >= 0 && (
-            <ReferenceLine
-              x={rows[current]?.week ?? ''}
-              stroke="var(--ink)"
-              strokeDasharray="3 3"
-              label={{ value: 'this week', fontSize: 12, fill: 'var(--ink)', position: 'top' }}
-            />
-          )}
+          <Legend
+            wrapperStyle={{ fontSize: 13 }}
+            itemSorter={null}
+            formatter={(name) => <span className="text-ink">{name}</span>}
+          />
           {sheet.byCrew.map((crew, index) => (
             <Bar
               key={crew.crewId}

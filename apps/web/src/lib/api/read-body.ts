@@ -3,27 +3,27 @@ import { DEFAULT_LIMIT_BYTES } from './contract.ts';
 import { invalid, ProblemError } from './problems.ts';
 import type { FieldError } from './schemas/problem.ts';
 
+/** Over this no more is read; a sender who goes on finds the connection closed. */
+const MOST_DISCARDED_BYTES = 12 * 1024 * 1024;
+
 /** The bytes of a body, never more than the limit in memory. @throws ProblemError 413 */
 export async function readBytes(request: Request, limitBytes: number): Promise<Uint8Array> {
-  const tooLarge = () =>
-    new ProblemError(
-      'too-large',
-      `The body may hold at most ${sizeText(limitBytes)}.`,
-      {},
-      { Connection: 'close' },
-    );
-  if (Number(request.headers.get('content-length') ?? 0) > limitBytes) throw tooLarge();
   const chunks: Uint8Array[] = [];
   let size = 0;
   const reader = request.body?.getReader();
+  // A sender may say a small length, or none, and send more. What is too much is read and thrown away, since many
+  // senders look for the answer only when they have sent all.
   for (let read = await reader?.read(); read && !read.done; read = await reader?.read()) {
     size += read.value.byteLength;
-    // A sender may say a small length, or none, and send more.
-    if (size > limitBytes) {
+    if (size <= limitBytes) chunks.push(read.value);
+    else chunks.length = 0;
+    if (size > MOST_DISCARDED_BYTES) {
       await reader?.cancel();
-      throw tooLarge();
+      break;
     }
-    chunks.push(read.value);
+  }
+  if (size > limitBytes) {
+    throw new ProblemError('too-large', `The body may hold at most ${sizeText(limitBytes)}.`);
   }
   return Buffer.concat(chunks);
 }

@@ -10,6 +10,7 @@ import { type Import, type ImportProblem, LISTED_PROBLEMS } from '../api/schemas
 import type { Company } from '../locals.ts';
 import { previewImportInWorker } from '../sheets/in-worker.ts';
 import type { ImportPreview } from '../sheets/preview-import.ts';
+import { en } from '../words/en.ts';
 import { csvOf } from './rows-csv.ts';
 
 const SHOWN_RECORDS = 20;
@@ -125,12 +126,32 @@ function referenceProblem(
 /** A record's field as text under its label; what is not there is left out. */
 function shownField(name: string, value: unknown): [string, string][] {
   if (name === 'naturalKey' || name === 'line' || value === null || value === undefined) return [];
-  if (Array.isArray(value)) {
-    if (value.length === 0) return [];
-    return [[fieldLabel(name, 'en'), value.map((one) => shownValue(name, one)).join(', ')]];
-  }
-  return [[fieldLabel(name, 'en'), shownValue(name, value)]];
+  const label = fieldLabel(columnNames.get(name) ?? name, 'en');
+  if (!Array.isArray(value)) return [[label, shownValue(name, value)]];
+  return value.length === 0 ? [] : [[label, value.map((one) => shownValue(name, one)).join(', ')]];
 }
+
+/** Fields of records that are called otherwise than the columns they come from. */
+const columnNames: ReadonlyMap<string, string> = new Map([
+  ['phoneE164', 'phone'],
+  ['latDeg', 'latitude'],
+  ['lonDeg', 'longitude'],
+  ['permittedFromMin', 'permittedFrom'],
+  ['permittedUntilMin', 'permittedUntil'],
+  ['firstLoadMin', 'firstLoad'],
+]);
+
+/** The trade's words for a field's values. */
+const valueWords: ReadonlyMap<string, Readonly<Record<string, string>>> = new Map<
+  string,
+  Readonly<Record<string, string>>
+>([
+  ['finish', en.finishes],
+  ['skills', en.finishes],
+  ['placingMethod', en.placingMethods],
+  ['role', en.roles],
+  ['language', { en: 'English', es: 'Spanish' }],
+]);
 
 function shownValue(name: string, value: unknown): string {
   if (typeof value === 'number' && name.endsWith('Min')) {
@@ -138,5 +159,5 @@ function shownValue(name: string, value: unknown): string {
     return `${Math.floor(minute / 60)}:${String(minute % 60).padStart(2, '0')}`;
   }
   if (typeof value === 'object' && value !== null) return Object.values(value).join(' × ');
-  return String(value);
+  return valueWords.get(name)?.[String(value)] ?? String(value);
 }

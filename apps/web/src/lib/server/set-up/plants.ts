@@ -145,14 +145,17 @@ function readHours(form: FormData): PlantFields['hours'] | null {
     const fromMin = clockMin.safeParse(from);
     const untilMin = clockMin.safeParse(until);
     if (!fromMin.success || !untilMin.success) return null;
-    hours.push({ fromMin: fromMin.data, untilMin: untilMin.data });
+    // Midnight at the end of a day is its last minute and one; at the start, its first.
+    hours.push({ fromMin: fromMin.data, untilMin: untilMin.data === 0 ? 1440 : untilMin.data });
   }
   return hours;
 }
 
 /** "Mon–Fri 06:00–17:00, Sat 07:00–12:00". */
 function hoursText(hours: PlantFields['hours']): string {
-  const texts = hours.map((one) => (one ? `${clockText(one.fromMin)}–${clockText(one.untilMin)}` : null));
+  const texts = hours.map((one) =>
+    one ? `${clockText(one.fromMin)}–${one.untilMin === 1440 ? '24:00' : clockText(one.untilMin)}` : null,
+  );
   const parts: string[] = [];
   for (let day = 0; day < texts.length; ) {
     const text = texts[day] ?? null;
