@@ -145,11 +145,13 @@ export function Importer({ slug, id }: { slug: string; id: string | null }) {
       {step.name === 'done' && (
         <div className="sheet p-6" role="status">
           <h2 className="text-xl">
-            {step.counts.created} {kindWords[step.shown.kind].many} added
+            {step.counts.created}{' '}
+            {step.counts.created === 1 ? kindWords[step.shown.kind].one : kindWords[step.shown.kind].many}{' '}
+            added
           </h2>
           <p className="mt-1 text-ink-soft">
             {step.counts.updated > 0 && `${step.counts.updated} filled in. `}
-            {step.counts.unchanged} were here already and stay as they are.
+            {step.counts.unchanged > 0 && `${step.counts.unchanged} here already, left as they are.`}
           </p>
           <div className="mt-4 flex flex-wrap gap-2">
             {nextKind(step.shown.kind) !== null && (

@@ -50,10 +50,3 @@ function callAuth(action: string, fields: Record<string, string>, request: Reque
   });
   return Auth(inner, { ...authConfig, skipCSRFCheck });
 }
-
-/** Where to go after sign-in: a path of this site, never another's address. */
-export function safeTarget(to: string | null): string {
-  if (to === null || !/^\/(?![/\\])/.test(to)) return '/';
-  const url = URL.canParse(to, env().APP_ORIGIN) ? new URL(to, env().APP_ORIGIN) : null;
-  return url?.origin === env().APP_ORIGIN ? `${url.pathname}${url.search}` : '/';
-}
