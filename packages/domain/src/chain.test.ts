@@ -17,7 +17,7 @@ if (!site || !mix || !plant) throw new Error('The sample board has a site, a mix
 
 function chain(pour: Partial<Pour>, more: Partial<ChainInput> = {}): Chain {
   return chainOf({
-    pour: samplePour('p', pour),
+    pour: samplePour('p', { placingRateYd3PerHour: 30, ...pour }),
     visit: { partYd3: null },
     site: site as ChainInput['site'],
     mix: mix ?? null,

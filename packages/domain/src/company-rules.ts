@@ -4,7 +4,7 @@
  */
 
 import { z } from 'zod';
-import { cureUses, finishes } from './vocabulary.ts';
+import { cureUses, finishes, placingMethods } from './vocabulary.ts';
 
 const minutes = z.number().min(0).max(1440);
 
@@ -21,7 +21,7 @@ export const companyRulesSchema = z.object({
   /** Wash-up after the finishing ends, minutes. Common practice, no source. */
   washUpMin: minutes.default(30),
   /** Yards placed per hour where the pour names no rate. Common practice, no source. */
-  placingRateYd3PerHour: z.number().positive().max(400).default(30),
+  placingRateYd3PerHour: z.number().positive().max(400).default(20),
   /** Yards in a full truck. Common practice: 8 to 11, 10 typical. */
   loadYd3: z.number().positive().max(15).default(10),
   /** Minutes to discharge a full truck. Published planning example: 10. */
@@ -50,6 +50,8 @@ export const companyRulesSchema = z.object({
   orderStepYd3: z.number().positive().max(5).default(0.25),
   /** Person-hours per ft² by finish, overriding the defaults. */
   workRatesPersonHoursPerFt2: z.partialRecord(z.enum(finishes), z.number().positive().max(1)).default({}),
+  /** People who place, per 10 yd³/h, by placing method, overriding the defaults. */
+  placersPer10Yd3PerHour: z.partialRecord(z.enum(placingMethods), z.number().positive().max(20)).default({}),
   /** Hours until release by use at 68 °F, overriding the published minimum times. */
   cureHours: z.partialRecord(z.enum(cureUses), z.number().min(0).max(2400)).default({}),
 });

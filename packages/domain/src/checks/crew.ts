@@ -46,7 +46,12 @@ export const personOverlap: Check = (plan, report) => {
 export const shortHanded: Check = (plan, report) => {
   const { present, offered, pour } = plan;
   const toPlace = pour
-    ? (pour.pour.peopleToPlace ?? peopleToPlace(pour.chain.placingRateYd3PerHour, pour.pour.placingMethod))
+    ? (pour.pour.peopleToPlace ??
+      peopleToPlace(
+        pour.chain.placingRateYd3PerHour,
+        pour.pour.placingMethod,
+        plan.index.rules.placersPer10Yd3PerHour,
+      ))
     : 1;
   const toFinish = pour?.pour.peopleToFinish ?? 0;
   const needed = Math.max(1, toPlace, toFinish);
