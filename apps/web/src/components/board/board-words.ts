@@ -70,6 +70,17 @@ export function countOf(severity: Severity, count: number): string {
   return `${count} ${severityWords[severity].toLowerCase()}${count === 1 ? '' : 's'}`;
 }
 
+/** What can differ in a visit that someone else has changed. */
+const visitFieldWords: Readonly<Record<string, string>> = {
+  crewId: 'crew',
+  during: 'time',
+  state: 'state',
+  wantedOn: 'day wanted',
+  title: 'title',
+  plannedMin: 'length',
+  partYd3: 'yards',
+};
+
 export const words = {
   today: 'Today',
   earlier: 'Earlier week',
@@ -113,5 +124,7 @@ export const words = {
   cancel: 'Cancel',
   fitsInstead: 'Where it fits',
   noFit: 'No slot without a stop in the days shown.',
+  changedMeanwhile: (fields: readonly string[]) =>
+    `Different now: ${fields.map((field) => visitFieldWords[field] ?? field).join(', ')}.`,
   offlineMove: 'The move was not saved: no connection. The card is back where it was.',
 } as const;

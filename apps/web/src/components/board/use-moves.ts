@@ -155,13 +155,14 @@ export function useMoves({ slug, snapshot, index, apply, show, reload, say }: Bo
       } catch (error) {
         if (!(error instanceof ApiProblem)) throw error;
         show(snapshot);
-        const { code, detail, findings } = error.problem;
+        const { code, detail, findings, changed = [] } = error.problem;
         if ((code === 'stops' || code === 'reason-needed') && findings) {
           await reload();
           refuse(code, placement, findings, again);
           return;
         }
-        showToast(code === 'unreachable' ? words.offlineMove : detail, { tone: 'stop' });
+        const told = changed.length > 0 ? `${detail} ${words.changedMeanwhile(changed)}` : detail;
+        showToast(code === 'unreachable' ? words.offlineMove : told, { tone: 'stop' });
         say(words.cancelled(titleOf(placement.visitId)));
         if (code !== 'unreachable') await reload();
       }
