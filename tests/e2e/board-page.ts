@@ -15,10 +15,16 @@ export class BoardPage {
     this.spoken = page.getByTestId('spoken');
   }
 
-  /** Opens the board at some days and waits until it follows changes. */
-  async open(slug: string, from: SiteDay, days: 1 | 3 | 7 | 14 = 1): Promise<void> {
+  /** Opens the board at some days and waits until it follows changes, or, with `lost`, knows that it does not. */
+  async open(
+    slug: string,
+    from: SiteDay,
+    days: 1 | 3 | 7 | 14 = 1,
+    connection: 'live' | 'lost' = 'live',
+  ): Promise<void> {
     await this.page.goto(`/${slug}/board?from=${from}&days=${days}`);
-    await expect(this.page.getByText('Live', { exact: true })).toBeVisible();
+    const words = connection === 'live' ? 'Live' : /^Connection lost/;
+    await expect(this.page.getByText(words, { exact: true })).toBeVisible();
     await expect(this.waiting).toBeVisible();
   }
 
