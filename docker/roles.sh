@@ -3,7 +3,7 @@
 set -eu
 psql -v ON_ERROR_STOP=1 --username "$POSTGRES_USER" --dbname postgres \
   -v owner="$APP_OWNER_PASSWORD" -v web="$APP_WEB_PASSWORD" -v worker="$APP_WORKER_PASSWORD" <<'SQL'
-create role app_owner login noinherit nosuperuser nocreatedb nocreaterole nobypassrls password :'owner';
+create role app_owner login nosuperuser nocreatedb nocreaterole nobypassrls password :'owner';
 create role app_web login nosuperuser nocreatedb nocreaterole nobypassrls password :'web';
 create role app_worker login nosuperuser nocreatedb nocreaterole nobypassrls password :'worker';
 create role app_cross nologin nosuperuser nobypassrls;

@@ -10,11 +10,11 @@ GRANT DELETE ON crew_memberships TO app_web;--> statement-breakpoint
 GRANT SELECT, INSERT ON people TO app_cross;--> statement-breakpoint
 GRANT UPDATE (email) ON people TO app_cross;--> statement-breakpoint
 GRANT SELECT ON links, notices, sessions TO app_cross;--> statement-breakpoint
-CREATE POLICY people_cross_read ON people FOR SELECT TO app_cross USING (true);--> statement-breakpoint
-CREATE POLICY people_cross_add ON people FOR INSERT TO app_cross WITH CHECK (true);--> statement-breakpoint
-CREATE POLICY people_cross_email ON people FOR UPDATE TO app_cross USING (email IS NULL) WITH CHECK (true);--> statement-breakpoint
-CREATE POLICY links_cross_read ON links FOR SELECT TO app_cross USING (true);--> statement-breakpoint
-CREATE POLICY notices_cross_read ON notices FOR SELECT TO app_cross USING (true);--> statement-breakpoint
+CREATE POLICY people_cross_read ON people FOR SELECT TO app_cross USING (current_user = 'app_cross');--> statement-breakpoint
+CREATE POLICY people_cross_add ON people FOR INSERT TO app_cross WITH CHECK (current_user = 'app_cross');--> statement-breakpoint
+CREATE POLICY people_cross_email ON people FOR UPDATE TO app_cross USING (email IS NULL AND current_user = 'app_cross') WITH CHECK (true);--> statement-breakpoint
+CREATE POLICY links_cross_read ON links FOR SELECT TO app_cross USING (current_user = 'app_cross');--> statement-breakpoint
+CREATE POLICY notices_cross_read ON notices FOR SELECT TO app_cross USING (current_user = 'app_cross');--> statement-breakpoint
 
 -- Who signs in with an e-mail address.
 CREATE FUNCTION app.person_for_sign_in(wanted_email text)

@@ -29,8 +29,6 @@ export async function ensureRoles(admin: pg.Client, secrets: Secrets): Promise<v
   }
   const { rowCount } = await admin.query('select from pg_roles where rolname = $1', [CROSS_ROLE]);
   if (rowCount === 0) await admin.query(`create role ${CROSS_ROLE} nologin nosuperuser nobypassrls`);
-  // Without inheriting: the owner may hand functions over, but sees no row by that.
-  await admin.query(`alter role ${ROLES.owner} noinherit`);
   await admin.query(`grant ${CROSS_ROLE} to ${ROLES.owner}`);
 }
 

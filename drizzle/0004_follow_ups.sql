@@ -1,0 +1,1 @@
+CREATE INDEX "visits_caused_by" ON "visits" USING btree ("company_id","caused_by_visit_id");
