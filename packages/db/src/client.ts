@@ -3,8 +3,12 @@
 import { sql } from 'drizzle-orm';
 import { drizzle, type NodePgDatabase } from 'drizzle-orm/node-postgres';
 import pg from 'pg';
-import { guarded } from './errors.ts';
+import { guarded, sqlStateOf } from './errors.ts';
 import * as tables from './tables/index.ts';
+
+/** deadlock_detected and serialization_failure (PostgreSQL 15, appendix A): nothing was written, so it may be tried again. */
+const PASSING = new Set(['40P01', '40001']);
+const ATTEMPTS = 3;
 
 export type Orm = NodePgDatabase<typeof tables>;
 /** A transaction with its settings made. */
@@ -32,7 +36,8 @@ export function openDatabase(url: string, options: { max?: number } = {}): Datab
 
 /**
  * Runs work in one transaction with the company and the acting person set, which row-level security reads.
- * `personId` is null for what a link's holder, a provider or the worker does.
+ * `personId` is null for what a link's holder, a provider or the worker does. Work that lost against another
+ * transaction (deadlock, serialization) is run anew, so it must do nothing that a rollback does not take back.
  */
 export function inCompany<T>(
   db: Database,
@@ -47,18 +52,24 @@ export function asPerson<T>(db: Database, personId: string, work: (tx: Tx) => Pr
   return inSettings(db, '', personId, work);
 }
 
-function inSettings<T>(
+async function inSettings<T>(
   db: Database,
   companyId: string,
   personId: string,
   work: (tx: Tx) => Promise<T>,
 ): Promise<T> {
-  return guarded(() =>
-    db.orm.transaction(async (tx) => {
-      await tx.execute(
-        sql`select set_config('app.company_id', ${companyId}, true), set_config('app.person_id', ${personId}, true)`,
+  for (let attempt = 1; ; attempt++) {
+    try {
+      return await guarded(() =>
+        db.orm.transaction(async (tx) => {
+          await tx.execute(
+            sql`select set_config('app.company_id', ${companyId}, true), set_config('app.person_id', ${personId}, true)`,
+          );
+          return work(tx);
+        }),
       );
-      return work(tx);
-    }),
-  );
+    } catch (error) {
+      if (attempt === ATTEMPTS || !PASSING.has(sqlStateOf(error) ?? '')) throw error;
+    }
+  }
 }

@@ -16,7 +16,12 @@ export function listen(
   let stopped = false;
 
   const connect = async (): Promise<void> => {
-    const mine = new pg.Client({ connectionString: url, application_name: 'strikeboard listen' });
+    const mine = new pg.Client({
+      connectionString: url,
+      application_name: 'strikeboard listen',
+      // Nothing is ever sent on this connection, so only the system's probes show that the other end is gone.
+      keepAlive: true,
+    });
     client = mine;
     const again = () => {
       if (stopped || client !== mine) return;

@@ -54,7 +54,8 @@ export async function lockBoard(tx: Tx): Promise<void> {
     .select({ id: companies.id })
     .from(companies)
     .where(eq(companies.id, currentCompany))
-    .for('update');
+    // Weaker than FOR UPDATE: rows that name the company may be written meanwhile, and never wait for this.
+    .for('no key update');
   if (rows.length !== 1) throw new NotFound('company', '');
 }
 

@@ -5,7 +5,7 @@ import { newId } from '../ids.ts';
 import { currentCompany } from '../tables/columns.ts';
 import { audit, visits } from '../tables/index.ts';
 import { type BoardChange, lockBoard, recordBoardChange } from './board-change.ts';
-import { type Acting, visitAt } from './placement.ts';
+import { type Acting, visitAt } from './visit-changes.ts';
 
 /**
  * Closes a visit that is over: it is done.

@@ -1,10 +1,10 @@
 /** Pours and other visits as they are made, edited and looked into. */
 
 import { fold } from '@strikeboard/domain/intake/text';
-import type { Finish, Jointing, PlacingMethod, VisitKind } from '@strikeboard/domain/vocabulary';
-import { and, desc, eq, sql } from 'drizzle-orm';
+import type { VisitKind } from '@strikeboard/domain/vocabulary';
+import { and, desc, eq, ne, sql } from 'drizzle-orm';
 import type { Tx } from '../client.ts';
-import { Conflict, constraintOf, NotFound, StaleVersion } from '../errors.ts';
+import { NotFound, StaleVersion } from '../errors.ts';
 import { newId } from '../ids.ts';
 import { currentCompany } from '../tables/columns.ts';
 import {
@@ -20,34 +20,21 @@ import {
   visits,
 } from '../tables/index.ts';
 import { type BoardChange, lockBoard, recordBoardChange } from './board-change.ts';
-import { type Acting, indexAround, type Reasons, writePlacement } from './placement.ts';
+import { writePlacement } from './placement.ts';
+import { setVisit } from './placement-rows.ts';
+import { columnsOf, naming, type PourFields, partsOf, requirePump } from './pour-fields.ts';
 import { readToldState } from './told-state.ts';
-import { keepRows } from './visit-rows.ts';
+import {
+  type Acting,
+  indexAround,
+  noteVisits,
+  type Reasons,
+  recordUndoable,
+  type VisitRow,
+} from './visit-changes.ts';
+import { keepRows, mergeKept } from './visit-rows.ts';
 
 const IN_FT2_PER_YD3 = 324;
-
-/** What can be set of a pour. Yards are yd³, temperatures °F, times minutes; null falls back to the company's rule. */
-export interface PourFields {
-  name: string;
-  jobRef: string | null;
-  orderedYd3: number;
-  mixId: string | null;
-  finish: Finish;
-  placingMethod: PlacingMethod;
-  jointing: Jointing;
-  placingRateYd3PerHour: number | null;
-  loadYd3: number | null;
-  setUpMin: number | null;
-  concreteTempF: number | null;
-  peopleToPlace: number | null;
-  peopleToFinish: number | null;
-  pumpId: string | null;
-  willCall: boolean;
-  readiness: { item: string; done: boolean }[];
-  notes: string | null;
-  /** Day that the customer wants it, in the site's zone. */
-  wantedOn: string | null;
-}
 
 /**
  * Makes a waiting pour with one slab.
@@ -64,6 +51,7 @@ export async function createPour(
   await lockBoard(tx);
   const { siteId, areaFt2, thicknessIn, wantedOn = null, ...fields } = of.pour;
   await siteOf(tx, siteId);
+  await requirePump(tx, fields.pumpId);
   const ids = { pour: newId(), slab: newId(), visit: newId() };
   await naming({ mixId: fields.mixId, pumpId: fields.pumpId, name: fields.name }, () =>
     tx.insert(pours).values({
@@ -98,7 +86,7 @@ export async function createPour(
     title: fields.name,
     wantedOn,
   });
-  await noteVisit(tx, of, { action: 'create-pour', visitId: ids.visit, after: { ...of.pour } });
+  await noteVisits(tx, of, [{ action: 'create-pour', visitId: ids.visit, after: { ...of.pour } }]);
   return recordBoardChange(tx, { kind: 'create-pour', actorPersonId: of.actorId, visitIds: [ids.visit] });
 }
 
@@ -119,14 +107,17 @@ export async function createVisit(
   await siteOf(tx, of.visit.siteId);
   const id = newId();
   await tx.insert(visits).values({ companyId: currentCompany, id, ...of.visit });
-  await noteVisit(tx, of, { action: 'create-visit', visitId: id, after: of.visit });
+  await noteVisits(tx, of, [{ action: 'create-visit', visitId: id, after: of.visit }]);
   return recordBoardChange(tx, { kind: 'create-visit', actorPersonId: of.actorId, visitIds: [id] });
 }
 
 /**
  * Changes a pour. Where it stands on the board it is planned and checked anew in the same transaction, and refused like
- * a drop would be. Of several visits of one pour the yards are shared as before.
- * @throws NotFound, StaleVersion, Refused as placeVisit does
+ * a drop would be. Of several visits of one pour the yards are shared as before; what is placed already stays.
+ * @throws NotFound for a pour, mix or pump that the company has not
+ * @throws StaleVersion when the pour has changed since `baseVersion`
+ * @throws Conflict `yards-placed` when more is placed already than the pour is to have
+ * @throws Refused as placeVisit does
  */
 export async function editPour(
   tx: Tx,
@@ -137,7 +128,7 @@ export async function editPour(
     .select()
     .from(pours)
     .where(and(eq(pours.companyId, currentCompany), eq(pours.id, of.pourId)))
-    .for('update');
+    .for('no key update');
   if (!pour) throw new NotFound('pour', of.pourId);
   if (pour.version !== of.baseVersion) {
     throw new StaleVersion(
@@ -150,57 +141,37 @@ export async function editPour(
     .select()
     .from(visits)
     .where(
-      and(
-        eq(visits.companyId, currentCompany),
-        eq(visits.pourId, pour.id),
-        sql`${visits.state} <> 'called-off'`,
-      ),
+      and(eq(visits.companyId, currentCompany), eq(visits.pourId, pour.id), ne(visits.state, 'called-off')),
     )
     .orderBy(visits.id);
-  const visitIds = visitRows.map(({ id }) => id);
-  const before = await keepRows(tx, visitIds, [pour.id]);
+  let before = await keepRows(
+    tx,
+    visitRows.map(({ id }) => id),
+    [pour.id],
+  );
   const { wantedOn, ...fields } = of.fields;
+  await requirePump(tx, fields.pumpId);
   await naming({ mixId: fields.mixId, pumpId: fields.pumpId, name: fields.name ?? pour.name }, () =>
     tx
       .update(pours)
       .set({ ...columnsOf(fields), version: sql`${pours.version} + 1` })
       .where(and(eq(pours.companyId, currentCompany), eq(pours.id, pour.id))),
   );
-  const share = fields.orderedYd3 === undefined ? null : fields.orderedYd3 / Number(pour.orderedYd3);
-  for (const visit of visitRows) {
-    await tx
-      .update(visits)
-      .set({
-        version: sql`${visits.version} + 1`,
-        ...(wantedOn !== undefined && visit.state === 'waiting' && { wantedOn }),
-        ...(fields.name !== undefined && { title: fields.name }),
-        ...(share !== null &&
-          visit.partYd3 !== null && { partYd3: (Number(visit.partYd3) * share).toFixed(3) }),
-      })
-      .where(and(eq(visits.companyId, currentCompany), eq(visits.id, visit.id)));
-  }
-  await tx.insert(audit).values({
-    companyId: currentCompany,
-    id: newId(),
-    at: new Date(of.nowMs),
-    actorPersonId: of.actorId,
-    action: 'edit-pour',
-    subjectKind: 'pour',
-    subjectId: pour.id,
-    before: Object.fromEntries(
-      Object.keys(fields).map((key) => [key, pour[key as keyof typeof pour] ?? null]),
-    ),
-    after: of.fields,
-  });
-  for (const visitId of visitIds) await noteVisit(tx, of, { action: 'edit-pour', visitId, after: of.fields });
+  const parts = fields.orderedYd3 === undefined ? null : partsOf(fields.orderedYd3, visitRows);
+  for (const visit of visitRows)
+    await setVisit(tx, visit.id, {
+      ...(wantedOn !== undefined && visit.state !== 'done' && { wantedOn }),
+      ...(fields.name !== undefined && { title: fields.name }),
+      ...(parts !== null && { partYd3: parts.get(visit.id) }),
+    });
+  await noteEdit(tx, of, pour, visitRows);
 
-  let last: BoardChange | null = null;
+  const touched = new Set(visitRows.map(({ id }) => id));
   for (const visit of visitRows) {
     if (visit.during === null || visit.crewId === null || visit.state === 'done') continue;
     const index = await indexAround(tx, visit.during.startMs, [visit.id]);
-    last = await writePlacement(tx, {
+    const written = await writePlacement(tx, {
       ...of,
-      kind: 'edit-pour',
       // A pump chosen anew is the one to book; otherwise the one that is booked stays.
       placement: {
         visitId: visit.id,
@@ -208,22 +179,13 @@ export async function editPour(
         crewStartMs: visit.during.startMs,
         ...(fields.pumpId !== undefined && { pumpId: fields.pumpId }),
       },
-      visit,
+      visit: { ...visit, title: fields.name ?? visit.title },
       index,
-      kept: before,
     });
+    before = mergeKept(before, written.before);
+    for (const id of written.visitIds) touched.add(id);
   }
-  if (last !== null) return last;
-  const versions = await tx
-    .select({ id: visits.id, version: visits.version })
-    .from(visits)
-    .where(and(eq(visits.companyId, currentCompany), eq(visits.pourId, pour.id)));
-  return recordBoardChange(tx, {
-    kind: 'edit-pour',
-    actorPersonId: of.actorId,
-    visitIds,
-    inverse: { before, versions: Object.fromEntries(versions.map(({ id, version }) => [id, version])) },
-  });
+  return recordUndoable(tx, of, { kind: 'edit-pour', visitIds: [...touched], before });
 }
 
 export interface VisitDetail {
@@ -296,32 +258,31 @@ export async function visitDetail(tx: Tx, visitId: string): Promise<VisitDetail>
     .orderBy(desc(audit.id))
     .limit(200);
   const state = await readToldState(tx, [visitId]);
-  const onShift = new Set(
-    shiftRows.filter(({ shift }) => shift.state === 'held').map(({ shift }) => shift.personId),
-  );
+  // A held shift says where a person stands, else the newest of what they were asked (ids grow with time).
+  const asked = [
+    ...shiftRows.map(({ shift, name, role }) => ({
+      rank: shift.state === 'held' ? '~' : shift.id,
+      personId: shift.personId,
+      name,
+      role: role as string,
+      state: shift.state as string,
+      answer: shift.answer,
+      told: state.isTold(shift),
+    })),
+    ...offerRows.map(({ offer, name, role }) => ({
+      rank: offer.id,
+      personId: offer.personId,
+      name,
+      role: role as string,
+      state: offer.state as string,
+      answer: offer.state === 'declined' ? ('no' as const) : ('none' as const),
+      told: state.isTold(offer),
+    })),
+  ];
+  const isLatest = (one: (typeof asked)[number]) =>
+    !asked.some((other) => other.personId === one.personId && other.rank > one.rank);
   return {
-    people: [
-      ...shiftRows
-        .filter(({ shift }) => shift.state === 'held' || !onShift.has(shift.personId))
-        .map(({ shift, name, role }) => ({
-          personId: shift.personId,
-          name,
-          role,
-          state: shift.state as string,
-          answer: shift.answer,
-          told: state.isTold(shift),
-        })),
-      ...offerRows
-        .filter(({ offer }) => !onShift.has(offer.personId))
-        .map(({ offer, name, role }) => ({
-          personId: offer.personId,
-          name,
-          role,
-          state: offer.state as string,
-          answer: offer.state === 'declined' ? ('no' as const) : ('none' as const),
-          told: state.isTold(offer),
-        })),
-    ],
+    people: asked.filter(isLatest).map(({ rank: _, ...person }) => person),
     notices: noticeRows.map(({ notice, name }) => ({
       id: notice.id,
       personName: name,
@@ -340,32 +301,6 @@ export async function visitDetail(tx: Tx, visitId: string): Promise<VisitDetail>
   };
 }
 
-const text = (value: number | null | undefined) =>
-  value === undefined ? undefined : value === null ? null : String(value);
-
-/** Given fields as columns; what is not given is left out. */
-function columnsOf(fields: Partial<Omit<PourFields, 'wantedOn'>>) {
-  return {
-    name: fields.name,
-    jobRef: fields.jobRef,
-    orderedYd3: fields.orderedYd3 === undefined ? undefined : String(fields.orderedYd3),
-    mixId: fields.mixId,
-    finish: fields.finish,
-    placingMethod: fields.placingMethod,
-    jointing: fields.jointing,
-    placingRateYd3PerHour: text(fields.placingRateYd3PerHour),
-    loadYd3: text(fields.loadYd3),
-    setUpMin: fields.setUpMin,
-    concreteTempF: text(fields.concreteTempF),
-    peopleToPlace: fields.peopleToPlace,
-    peopleToFinish: fields.peopleToFinish,
-    pumpId: fields.pumpId,
-    willCall: fields.willCall,
-    readiness: fields.readiness,
-    notes: fields.notes,
-  };
-}
-
 async function siteOf(tx: Tx, siteId: string): Promise<void> {
   const [site] = await tx
     .select({ id: sites.id })
@@ -374,37 +309,31 @@ async function siteOf(tx: Tx, siteId: string): Promise<void> {
   if (!site) throw new NotFound('site', siteId);
 }
 
-/** Words what the database refuses of a pour's references. */
-async function naming(
-  of: { mixId?: string | null; pumpId?: string | null; name: string },
-  write: () => Promise<unknown>,
-): Promise<void> {
-  try {
-    await write();
-  } catch (error) {
-    const constraint = constraintOf(error);
-    if (constraint === 'pours_mix_fk') throw new NotFound('mix', of.mixId ?? '');
-    if (constraint === 'pours_pump_fk') throw new NotFound('pump', of.pumpId ?? '');
-    if (constraint === 'pours_natural_key') throw new Conflict('pour-taken', { name: of.name });
-    throw error;
-  }
-}
-
-async function noteVisit(
+/** An edit stands in the pour's history, where stale edits look, and in that of each of its visits. */
+async function noteEdit(
   tx: Tx,
-  of: Acting,
-  entry: { action: string; visitId: string; after: unknown },
+  of: Acting & { fields: Partial<PourFields> },
+  pour: typeof pours.$inferSelect,
+  visitRows: readonly VisitRow[],
 ): Promise<void> {
+  const was = { ...pour, wantedOn: visitRows[0]?.wantedOn ?? null };
+  const before = Object.fromEntries(Object.keys(of.fields).map((key) => [key, was[key as keyof typeof was]]));
   await tx.insert(audit).values({
     companyId: currentCompany,
     id: newId(),
     at: new Date(of.nowMs),
     actorPersonId: of.actorId,
-    action: entry.action,
-    subjectKind: 'visit',
-    subjectId: entry.visitId,
-    after: entry.after,
+    action: 'edit-pour',
+    subjectKind: 'pour',
+    subjectId: pour.id,
+    before,
+    after: of.fields,
   });
+  await noteVisits(
+    tx,
+    of,
+    visitRows.map(({ id }) => ({ action: 'edit-pour', visitId: id, before, after: of.fields })),
+  );
 }
 
 /** Names of the fields that were edited since a version, from the history of edits. */

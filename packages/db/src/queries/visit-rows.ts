@@ -1,6 +1,7 @@
 /** Every row that hangs on some visits, taken before a change so that undo can put them back. */
 
-import { and, eq, inArray, notInArray, sql } from 'drizzle-orm';
+import type { Interval } from '@strikeboard/domain/interval';
+import { and, eq, inArray, notInArray, type SQL, sql } from 'drizzle-orm';
 import type { Tx } from '../client.ts';
 import { currentCompany } from '../tables/columns.ts';
 import { equipmentBookings, mixOrders, offers, pours, shifts, visits } from '../tables/index.ts';
@@ -26,6 +27,7 @@ function kept<Row extends { companyId: string; createdAt: Date }>(row: Row): Kep
 const iso = (at: Date | null): string | null => at?.toISOString() ?? null;
 const date = (text: string | null): Date | null => (text === null ? null : new Date(text));
 
+/** Takes the rows of some visits, and of some pours, as they are now. */
 export async function keepRows(
   tx: Tx,
   visitIds: readonly string[],
@@ -63,39 +65,79 @@ export async function keepRows(
   };
 }
 
-/**
- * Puts rows back as they were. What came since is released, withdrawn or called off, never deleted. Holding rows give
- * way first, so that nothing stands in two places in between; what the database still refuses is the caller's to word.
- */
-export async function restoreRows(tx: Tx, rows: KeptRows, visitIds: readonly string[]): Promise<void> {
+/** Rows of two takings, each once; of a row in both the first. */
+export function mergeKept(first: KeptRows, then: KeptRows): KeptRows {
+  const merged = <Row extends { id: string }>(rows: readonly Row[], others: readonly Row[]): Row[] => [
+    ...rows,
+    ...others.filter(({ id }) => !rows.some((row) => row.id === id)),
+  ];
+  return {
+    visits: merged(first.visits, then.visits),
+    shifts: merged(first.shifts, then.shifts),
+    offers: merged(first.offers, then.offers),
+    mixOrders: merged(first.mixOrders, then.mixOrders),
+    bookings: merged(first.bookings, then.bookings),
+    pours: merged(first.pours, then.pours),
+  };
+}
+
+/** Releases, withdraws and calls off all that hangs on some visits, but for the rows that are to stay. */
+export async function releaseRows(
+  tx: Tx,
+  visitIds: readonly string[],
+  stay: ReadonlySet<string> = new Set(),
+): Promise<void> {
   const ids = [...visitIds];
   if (ids.length === 0) return;
-  const mine = (table: typeof shifts | typeof offers | typeof mixOrders | typeof equipmentBookings) =>
-    and(eq(table.companyId, currentCompany), inArray(table.visitId, ids));
+  const mine = (
+    table: typeof shifts | typeof offers | typeof mixOrders | typeof equipmentBookings,
+  ): SQL[] => [
+    eq(table.companyId, currentCompany),
+    inArray(table.visitId, ids),
+    ...(stay.size > 0 ? [notInArray(table.id, [...stay])] : []),
+  ];
   await tx
     .update(shifts)
     .set({ state: 'released' })
-    .where(and(mine(shifts), eq(shifts.state, 'held')));
+    .where(and(...mine(shifts), eq(shifts.state, 'held')));
   await tx
     .update(offers)
     .set({ state: 'withdrawn' })
-    .where(and(mine(offers), eq(offers.state, 'open')));
+    .where(and(...mine(offers), eq(offers.state, 'open')));
   await tx
     .update(mixOrders)
     .set({ state: 'called-off' })
-    .where(and(mine(mixOrders), notInArray(mixOrders.state, ['refused', 'called-off'])));
+    .where(and(...mine(mixOrders), notInArray(mixOrders.state, ['refused', 'called-off'])));
   await tx
     .update(equipmentBookings)
     .set({ state: 'called-off' })
-    .where(and(mine(equipmentBookings), notInArray(equipmentBookings.state, ['refused', 'called-off'])));
+    .where(and(...mine(equipmentBookings), notInArray(equipmentBookings.state, ['refused', 'called-off'])));
+}
 
+/** Calls off visits that still wait for a reason that is gone. */
+export async function callOffVisits(tx: Tx, visitIds: readonly string[]): Promise<void> {
+  if (visitIds.length === 0) return;
+  await tx
+    .update(visits)
+    .set({ state: 'called-off', version: sql`${visits.version} + 1` })
+    .where(and(eq(visits.companyId, currentCompany), inArray(visits.id, [...visitIds])));
+}
+
+/**
+ * Puts rows back as they were. What came since is released, withdrawn or called off, never deleted; what someone has
+ * answered since, for the very time that comes back, stays answered. Holding rows give way first, so that nothing
+ * stands in two places in between; what the database still refuses is the caller's to word.
+ */
+export async function restoreRows(tx: Tx, rows: KeptRows, visitIds: readonly string[]): Promise<void> {
+  if (visitIds.length === 0) return;
+  const answered = await answeredSince(tx, rows, visitIds);
+  await releaseRows(tx, visitIds, answered);
   for (const { id, version, ...before } of rows.pours) {
     await tx
       .update(pours)
       .set({ ...before, version: sql`${pours.version} + 1` })
       .where(and(eq(pours.companyId, currentCompany), eq(pours.id, id)));
   }
-  const known = new Set(rows.visits.map(({ id }) => id));
   for (const { id, version, ...before } of rows.visits) {
     await tx
       .update(visits)
@@ -103,23 +145,24 @@ export async function restoreRows(tx: Tx, rows: KeptRows, visitIds: readonly str
       .where(and(eq(visits.companyId, currentCompany), eq(visits.id, id)));
   }
   // A follow-up that the change made has nothing to go back to.
-  const made = ids.filter((id) => !known.has(id));
-  if (made.length > 0) {
-    await tx
-      .update(visits)
-      .set({ state: 'called-off', version: sql`${visits.version} + 1` })
-      .where(and(eq(visits.companyId, currentCompany), inArray(visits.id, made)));
-  }
-  for (const { id, answeredAt, ...before } of rows.shifts)
+  await callOffVisits(
+    tx,
+    visitIds.filter((id) => !rows.visits.some((row) => row.id === id)),
+  );
+  for (const { id, answeredAt, ...before } of rows.shifts) {
+    if (answered.has(id)) continue;
     await tx
       .update(shifts)
       .set({ ...before, answeredAt: date(answeredAt) })
       .where(and(eq(shifts.companyId, currentCompany), eq(shifts.id, id)));
-  for (const { id, answeredAt, ...before } of rows.offers)
+  }
+  for (const { id, answeredAt, ...before } of rows.offers) {
+    if (answered.has(id)) continue;
     await tx
       .update(offers)
       .set({ ...before, answeredAt: date(answeredAt) })
       .where(and(eq(offers.companyId, currentCompany), eq(offers.id, id)));
+  }
   for (const { id, ...before } of rows.mixOrders)
     await tx
       .update(mixOrders)
@@ -130,4 +173,45 @@ export async function restoreRows(tx: Tx, rows: KeptRows, visitIds: readonly str
       .update(equipmentBookings)
       .set(before)
       .where(and(eq(equipmentBookings.companyId, currentCompany), eq(equipmentBookings.id, id)));
+}
+
+/** Ids of shifts and offers that were answered after the rows were taken, for the time that the rows put back. */
+async function answeredSince(tx: Tx, rows: KeptRows, visitIds: readonly string[]): Promise<Set<string>> {
+  const now = await keepRows(tx, visitIds);
+  const returning = new Map(
+    rows.visits.map(({ id, state, during }) => [id, isOnBoard(state) ? during : null]),
+  );
+  const isAnswered = (
+    row: KeptRows['shifts'][number] | KeptRows['offers'][number],
+    before: typeof row | undefined,
+  ) =>
+    row.answeredAt !== null &&
+    row.answeredAt !== (before?.answeredAt ?? null) &&
+    isSame(row.during, returning.get(row.visitId) ?? null);
+  const ids = new Set<string>();
+  for (const row of now.shifts)
+    if (
+      isAnswered(
+        row,
+        rows.shifts.find(({ id }) => id === row.id),
+      )
+    )
+      ids.add(row.id);
+  for (const row of now.offers)
+    if (
+      isAnswered(
+        row,
+        rows.offers.find(({ id }) => id === row.id),
+      )
+    )
+      ids.add(row.id);
+  return ids;
+}
+
+function isOnBoard(state: KeptRows['visits'][number]['state']): boolean {
+  return state === 'pencilled' || state === 'firm' || state === 'done';
+}
+
+function isSame(one: Interval, other: Interval | null): boolean {
+  return other !== null && one.startMs === other.startMs && one.endMs === other.endMs;
 }

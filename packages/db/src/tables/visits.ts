@@ -62,6 +62,7 @@ export const visits = pgTable(
     index('visits_state').on(t.companyId, t.state),
     index('visits_site').on(t.companyId, t.siteId),
     index('visits_pour').on(t.companyId, t.pourId),
+    index('visits_caused_by').on(t.companyId, t.causedByVisitId),
     foreignKey({
       columns: [t.companyId, t.siteId],
       foreignColumns: [sites.companyId, sites.id],
