@@ -145,17 +145,19 @@ export function VisitCard({
   onOpen: (visitId: string) => void;
   mayMove: boolean;
 }) {
+  const stays = !mayMove || !card || card.visit.state === 'done';
   const { attributes, listeners, setNodeRef, isDragging } = useDraggable({
     id: card?.visit.id ?? 'unknown',
-    disabled: !mayMove || !card || card.visit.state === 'done',
+    disabled: stays,
   });
   if (!card) return null;
   return (
     <button
       type="button"
       ref={setNodeRef}
-      {...attributes}
-      {...listeners}
+      // A card that stays where it is can still be opened, so it is no disabled button.
+      {...(stays ? {} : attributes)}
+      {...(stays ? {} : listeners)}
       onClick={() => onOpen(card.visit.id)}
       aria-label={cardLabel(card)}
       data-visit={card.visit.id}
