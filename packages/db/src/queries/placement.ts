@@ -15,6 +15,7 @@ import { type BoardChange, lockBoard } from './board-change.ts';
 import { needlessFollowUps, rehold, setVisit, writePlannedRows } from './placement-rows.ts';
 import {
   type Acting,
+  changedAfter,
   type Inverse,
   indexAround,
   noteVisits,
@@ -23,7 +24,6 @@ import {
   settle,
   toBeTold,
   type VisitRow,
-  versionsOf,
   visitAt,
 } from './visit-changes.ts';
 import { callOffVisits, type KeptRows, keepRows, releaseRows, restoreRows } from './visit-rows.ts';
@@ -129,8 +129,8 @@ export async function makeFirm(
 }
 
 /**
- * Undoes a change, if nothing that it touched has changed since. The undoing is a change like any other, so it can be
- * undone too.
+ * Undoes a change, if nothing that it touched has changed since and not been put back. The undoing is a change like any
+ * other, so it can be undone too.
  * @throws NotFound for a revision without a change
  * @throws Conflict `not-undoable`, `undone-already`, `changed-since` or `time-taken`
  */
@@ -148,9 +148,7 @@ export async function undoChange(tx: Tx, of: Acting & { revision: number }): Pro
   const inverse = change.inverse as unknown as Inverse;
   const { visitIds } = change;
   const pourIds = inverse.before.pours.map(({ id }) => id);
-  const moved = (await versionsOf(tx, { visitIds, pourIds })).find(
-    ({ id, version }) => inverse.versions[id] !== version,
-  );
+  const moved = await changedAfter(tx, { revision: of.revision, visitIds, inverse });
   if (moved) {
     const { kind, id, title } = moved;
     throw new Conflict('changed-since', { ...(kind === 'visit' ? { visitId: id } : { pourId: id }), title });
@@ -175,7 +173,11 @@ export async function undoChange(tx: Tx, of: Acting & { revision: number }): Pro
   const after = await keepRows(tx, visitIds, pourIds);
   const concerned = visitIds.filter((id) => whatIsTold(before, id) !== whatIsTold(after, id));
   for (const visitId of await toBeTold(tx, concerned)) await settle(tx, of, visitId);
-  return recordUndoable(tx, of, { kind: 'undo', visitIds, before, undoes: of.revision });
+  const back = [...inverse.before.visits, ...inverse.before.pours];
+  return recordUndoable(tx, of, {
+    ...{ kind: 'undo', visitIds, before, undoes: of.revision },
+    backAt: Object.fromEntries(back.map(({ id, version }) => [id, version])),
+  });
 }
 
 /** All of a visit's rows that its people may be told of, as text to compare. */

@@ -3,7 +3,7 @@
 import { type BoardIndex, indexSnapshot } from '@strikeboard/domain/board-index';
 import type { FindingCode } from '@strikeboard/domain/finding';
 import type { Interval } from '@strikeboard/domain/interval';
-import { and, desc, eq, inArray, sql } from 'drizzle-orm';
+import { and, desc, eq, gt, inArray, sql } from 'drizzle-orm';
 import type { Tx } from '../client.ts';
 import { NotFound, StaleVersion } from '../errors.ts';
 import { newId } from '../ids.ts';
@@ -20,6 +20,8 @@ const LOOK_DAYS = 8;
 const FIT_DAYS = 14;
 /** Changes of the company in which the version that a stale write was based on is looked for. */
 const STALE_LOOK = 2000;
+/** Undoings through which a change is followed back. */
+const UNDO_LOOK = 100;
 
 export type VisitRow = typeof visits.$inferSelect;
 
@@ -38,6 +40,8 @@ export interface Inverse {
   before: KeptRows;
   /** Version of each visit, and of each pour that was changed too, right after the change. */
   versions: Record<string, number>;
+  /** Of an undoing: the version that each row is back at but for its number. */
+  backAt?: Record<string, number>;
 }
 
 /** Holds a visit for this transaction. @throws NotFound, StaleVersion unless it is at `baseVersion` */
@@ -75,7 +79,13 @@ export async function indexAround(tx: Tx, atMs: number, visitIds: readonly strin
 export async function recordUndoable(
   tx: Tx,
   of: Acting,
-  change: { kind: string; visitIds: readonly string[]; before: KeptRows; undoes?: number },
+  change: {
+    kind: string;
+    visitIds: readonly string[];
+    before: KeptRows;
+    undoes?: number;
+    backAt?: Record<string, number>;
+  },
 ): Promise<BoardChange> {
   const versions = await versionsOf(tx, {
     visitIds: change.visitIds,
@@ -84,6 +94,7 @@ export async function recordUndoable(
   const inverse: Inverse = {
     before: change.before,
     versions: Object.fromEntries(versions.map(({ id, version }) => [id, version])),
+    ...(change.backAt && { backAt: change.backAt }),
   };
   return recordBoardChange(tx, {
     kind: change.kind,
@@ -94,8 +105,45 @@ export async function recordUndoable(
   });
 }
 
+/**
+ * The first visit or pour of a change that has changed since; null when all stand as the change left them. What was
+ * changed and undone stands as it did.
+ */
+export async function changedAfter(
+  tx: Tx,
+  of: { revision: number; visitIds: readonly string[]; inverse: Inverse },
+): Promise<{ kind: 'visit' | 'pour'; id: string; title: string } | null> {
+  const pourIds = of.inverse.before.pours.map(({ id }) => id);
+  const rows = await versionsOf(tx, { visitIds: of.visitIds, pourIds });
+  const moved = rows.filter(({ id, version }) => of.inverse.versions[id] !== version);
+  if (moved.length === 0) return null;
+  const undoings = await tx
+    .select({ inverse: boardChanges.inverse })
+    .from(boardChanges)
+    .where(
+      and(
+        eq(boardChanges.companyId, currentCompany),
+        gt(boardChanges.revision, of.revision),
+        eq(boardChanges.kind, 'undo'),
+      ),
+    )
+    .orderBy(desc(boardChanges.revision))
+    .limit(UNDO_LOOK);
+  return (
+    moved.find(({ id, version }) => {
+      let standsAt: number | undefined = version;
+      for (const { inverse } of undoings) {
+        // Written by recordUndoable and by nothing else, so it has the shape.
+        const { versions, backAt } = inverse as unknown as Inverse;
+        if (versions[id] === standsAt) standsAt = backAt?.[id];
+      }
+      return standsAt !== of.inverse.versions[id];
+    }) ?? null
+  );
+}
+
 /** Versions of visits and pours as they are now. */
-export async function versionsOf(
+async function versionsOf(
   tx: Tx,
   of: { visitIds: readonly string[]; pourIds: readonly string[] },
 ): Promise<{ kind: 'visit' | 'pour'; id: string; version: number; title: string }[]> {
