@@ -18,10 +18,10 @@ import { addDays, formatDay, mondayOf, type SiteDay, siteDayOf } from '@strikebo
 import { QueryClientProvider } from '@tanstack/react-query';
 import { useCallback, useEffect, useMemo, useRef, useState } from 'react';
 import { queryClient } from '../../lib/client/query-client.ts';
+import { office } from '../../lib/words/office.en.ts';
 import { Button } from '../ui/Button.tsx';
 import { showToast, Toasts } from '../ui/Toasts.tsx';
 import { answersOf } from './board-data.ts';
-import { severityWords, words } from './board-words.ts';
 import { DayHeads } from './DayHeads.tsx';
 import { DropDialog } from './DropDialog.tsx';
 import { findingWords, namesOf } from './finding-words.ts';
@@ -48,6 +48,8 @@ export interface BoardProps {
   dayUntilMin: number;
 }
 
+const words = office.board;
+const { severities } = office.terms;
 const dayChoices = [1, 3, 7, 14] as const;
 const MINUTE_MS = 60_000;
 const PHONE_PX = 640;
@@ -175,7 +177,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
         return {
           crew,
           ...layLane(cards),
-          people: [`${members.length} people`, foreman].filter((part) => part != null).join(' · '),
+          people: [words.people(members.length), foreman].filter((part) => part != null).join(' · '),
         };
       }),
     [crews, snapshot, index, siteOf, scale, boardWidthPx, nowMs],
@@ -279,7 +281,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
     }
     const crew = index?.crews.get(preview.crewId)?.name ?? '';
     const verdict =
-      preview.verdict === 0 ? words.fits : severityWords[preview.verdict === 2 ? 'stop' : 'caution'];
+      preview.verdict === 0 ? words.fits : severities[preview.verdict === 2 ? 'stop' : 'caution'];
     const first = preview.findings.find((finding) => finding.severity !== 'note');
     setSaid(
       words.over(
@@ -320,7 +322,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
         </Button>
         <h1 className="min-w-0 text-lg whitespace-nowrap">
           {formatDay(from, 'en')}
-          {days > 1 && ` to ${formatDay(addDays(from, days - 1), 'en')}`}
+          {days > 1 && ` ${words.until(formatDay(addDays(from, days - 1), 'en'))}`}
         </h1>
         <label className="flex items-center gap-1.5 text-sm">
           <span className="sr-only">{words.daysShown}</span>
@@ -331,7 +333,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
           >
             {dayChoices.map((choice) => (
               <option key={choice} value={choice}>
-                {choice === 1 ? '1 day' : `${choice} days`}
+                {words.dayCount(choice)}
               </option>
             ))}
           </select>
@@ -392,7 +394,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
               className="relative flex min-h-full flex-col"
               style={{ width: headWidthPx + boardWidthPx }}
             >
-              <section aria-label={words.boardLabel} aria-busy={!snapshot} className="grow">
+              <section aria-label={words.label} aria-busy={!snapshot} className="grow">
                 <DayHeads scale={scale} headWidthPx={headWidthPx} today={today} />
                 {!snapshot && <p className="sticky left-0 p-6">{words.loading}</p>}
                 {laid.map(({ crew, cards, rows, people }) => (
@@ -412,7 +414,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
                             label: `${whenText(preview.crewStartMs, preview.zone)} · ${
                               preview.verdict === 0
                                 ? words.fits
-                                : severityWords[preview.verdict === 2 ? 'stop' : 'caution']
+                                : severities[preview.verdict === 2 ? 'stop' : 'caution']
                             }`,
                           }
                         : null
@@ -428,8 +430,8 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
                 ))}
                 {snapshot && crews.length === 0 && (
                   <p className="p-6">
-                    No crews yet. <a href={`/${slug}/import`}>Bring in your crews and pours</a> or{' '}
-                    <a href={`/${slug}/set-up`}>set them up</a>.
+                    {words.noCrews.none} <a href={`/${slug}/import`}>{words.noCrews.bringIn}</a>{' '}
+                    {words.noCrews.or} <a href={`/${slug}/set-up`}>{words.noCrews.setUp}</a>.
                   </p>
                 )}
               </section>
@@ -488,7 +490,7 @@ function BoardScreen({ slug, zone, mayMove, dayFromMin, dayUntilMin, ...start }:
           onMade={(change) => {
             apply(change.patch);
             setCreating(false);
-            showToast('The pour waits on the strip.');
+            showToast(words.made);
           }}
         />
       )}

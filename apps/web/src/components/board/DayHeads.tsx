@@ -1,6 +1,8 @@
 import { addDays, formatDay, type SiteDay } from '@strikeboard/domain/zone';
-import { words } from './board-words.ts';
+import { office } from '../../lib/words/office.en.ts';
 import { hourMarks, type Scale, shareOfDay } from './scale.ts';
+
+const words = office.board;
 
 /** The days over the lanes, each with the hours of its rule. */
 export function DayHeads({

@@ -1,11 +1,13 @@
 import type { Finding } from '@strikeboard/domain/finding';
 import { type FormEvent, useState } from 'react';
+import { office } from '../../lib/words/office.en.ts';
 import { Button } from '../ui/Button.tsx';
 import { Dialog } from '../ui/Dialog.tsx';
 import { Field } from '../ui/Field.tsx';
-import { words } from './board-words.ts';
 import { FindingList } from './FindingList.tsx';
 import type { FindingNames } from './finding-words.ts';
+
+const words = office.drop;
 
 /** What a drop was refused with, or what it needs before it can be done. */
 export interface Refusal {
@@ -74,7 +76,7 @@ export function DropDialog({
             ))}
           </ul>
           <div className="mt-4 flex justify-end">
-            <Button onClick={close}>{words.cancel}</Button>
+            <Button onClick={close}>{office.cancel}</Button>
           </div>
         </div>
       ) : (
@@ -92,7 +94,7 @@ export function DropDialog({
             )}
           </Field>
           <div className="flex justify-end gap-2">
-            <Button onClick={close}>{words.cancel}</Button>
+            <Button onClick={close}>{office.cancel}</Button>
             <Button look="main" type="submit">
               {words.placeAnyway}
             </Button>

@@ -4,12 +4,15 @@ import { finishes, placingMethods } from '@strikeboard/domain/vocabulary';
 import { type FormEvent, useState } from 'react';
 import { createPour } from '../../lib/api/schemas/pours.ts';
 import { ApiProblem, call } from '../../lib/client/api.ts';
+import { office } from '../../lib/words/office.en.ts';
 import { Button } from '../ui/Button.tsx';
 import { Dialog } from '../ui/Dialog.tsx';
 import { Field } from '../ui/Field.tsx';
 import type { BoardPatch } from './board-data.ts';
-import { finishWords, methodWords, words } from './board-words.ts';
 import { numberIn } from './pour-fields.ts';
+
+const words = office.newPour;
+const { finishes: finishWords, methods: methodWords } = office.terms;
 
 const empty = {
   siteId: '',
@@ -76,13 +79,13 @@ export function NewPour({
     const finish = finishes.find((known) => known === draft.finish);
     const placingMethod = placingMethods.find((known) => known === draft.placingMethod);
     const missing: Partial<Record<string, string>> = {};
-    if (draft.siteId === '') missing.siteId = 'Choose a site.';
-    if (draft.name.trim() === '') missing.name = 'Name it, such as "Garage slab".';
-    if (areaFt2 === null || !(areaFt2 > 0))
-      missing.areaFt2 = 'Give length and width, or the area, as numbers over 0.';
-    if (thicknessIn === null || !(thicknessIn > 0)) missing.thicknessIn = 'Give inches over 0, such as 4.';
-    if (orderedYd3 === null || !(orderedYd3 > 0))
-      missing.orderedYd3 = 'Give yards over 0, or leave it blank to reckon them.';
+    if (draft.siteId === '') missing.siteId = words.siteMissing;
+    if (draft.name.trim() === '') missing.name = words.nameMissing;
+    if (areaFt2 === null || !(areaFt2 > 0)) missing.areaFt2 = words.areaMissing;
+    if (thicknessIn === null || !(thicknessIn > 0)) missing.thicknessIn = words.thicknessMissing;
+    // Left blank, it waits for area and thickness, which say themselves what they lack.
+    const waits = orderedYd3 === null && ('areaFt2' in missing || 'thicknessIn' in missing);
+    if (!waits && (orderedYd3 === null || !(orderedYd3 > 0))) missing.orderedYd3 = words.orderMissing;
     setErrors(missing);
     if (
       Object.keys(missing).length > 0 ||
@@ -117,7 +120,7 @@ export function NewPour({
       setProblem(thrown.problem.detail);
       setErrors(
         Object.fromEntries(
-          (thrown.problem.errors ?? []).map(({ field, expected }) => [field, `Expected ${expected}.`]),
+          (thrown.problem.errors ?? []).map(({ field, expected }) => [field, words.expected(expected)]),
         ),
       );
     } finally {
@@ -140,9 +143,9 @@ export function NewPour({
   );
 
   return (
-    <Dialog open={open} onClose={onClose} title={words.newPour}>
+    <Dialog open={open} onClose={onClose} title={words.title}>
       <form onSubmit={(event) => void submit(event)} className="flex flex-col gap-3" noValidate>
-        <Field label="Site" error={errors.siteId}>
+        <Field label={words.site} error={errors.siteId}>
           {(control) => (
             <select
               {...control}
@@ -150,7 +153,7 @@ export function NewPour({
               value={draft.siteId}
               onChange={(event) => set('siteId', event.target.value)}
             >
-              <option value="">Choose…</option>
+              <option value="">{words.choose}</option>
               {[...snapshot.sites]
                 .sort((a, b) => a.name.localeCompare(b.name))
                 .map((site) => (
@@ -162,9 +165,9 @@ export function NewPour({
           )}
         </Field>
         <p className="-mt-1 text-sm">
-          A new site? <a href={`/${slug}/set-up/sites`}>Add it in set-up</a> first.
+          {words.newSite.ask} <a href={`/${slug}/set-up/sites`}>{words.newSite.add}</a> {words.newSite.first}
         </p>
-        <Field label="Name" error={errors.name}>
+        <Field label={words.name} error={errors.name}>
           {(control) => (
             <input
               {...control}
@@ -176,18 +179,18 @@ export function NewPour({
           )}
         </Field>
         <div className="grid grid-cols-3 gap-3">
-          {number('lengthFt', 'Length, ft')}
-          {number('widthFt', 'Width, ft')}
-          {number('areaFt2', 'or area, ft²')}
-          {number('thicknessIn', 'Thickness, in')}
+          {number('lengthFt', words.length)}
+          {number('widthFt', words.width)}
+          {number('areaFt2', words.area)}
+          {number('thicknessIn', words.thickness)}
           {number(
             'orderedYd3',
-            'Order, yd³',
+            words.order,
             reckoned === null
-              ? 'Blank: reckoned'
-              : `Blank: ${reckoned}, with ${snapshot.rules.wastePercent} % waste`,
+              ? words.blankReckoned
+              : words.blankIsWithWaste(reckoned, snapshot.rules.wastePercent),
           )}
-          <Field label="Wanted on">
+          <Field label={words.wantedOn}>
             {(control) => (
               <input
                 {...control}
@@ -200,7 +203,7 @@ export function NewPour({
           </Field>
         </div>
         <div className="grid grid-cols-2 gap-3">
-          <Field label="Finish">
+          <Field label={words.finish}>
             {(control) => (
               <select
                 {...control}
@@ -216,7 +219,7 @@ export function NewPour({
               </select>
             )}
           </Field>
-          <Field label="Placing">
+          <Field label={words.placing}>
             {(control) => (
               <select
                 {...control}
@@ -239,9 +242,9 @@ export function NewPour({
           </p>
         )}
         <div className="flex justify-end gap-2">
-          <Button onClick={onClose}>{words.cancel}</Button>
+          <Button onClick={onClose}>{office.cancel}</Button>
           <Button type="submit" look="main" busy={busy}>
-            Add to the strip
+            {words.add}
           </Button>
         </div>
       </form>

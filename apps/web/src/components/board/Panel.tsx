@@ -7,26 +7,18 @@ import { useQuery } from '@tanstack/react-query';
 import { useEffect, useRef, useState } from 'react';
 import { callOffVisit, makeVisitFirm, readVisit, sendNow } from '../../lib/api/schemas/board.ts';
 import { ApiProblem, call } from '../../lib/client/api.ts';
+import { office } from '../../lib/words/office.en.ts';
 import { Badge } from '../ui/Badge.tsx';
 import { Button } from '../ui/Button.tsx';
 import { showToast } from '../ui/Toasts.tsx';
-import {
-  answerWords,
-  finishWords,
-  kindWords,
-  methodWords,
-  orderStateWords,
-  stateWords,
-  words,
-} from './board-words.ts';
 import { FindingList } from './FindingList.tsx';
 import type { FindingNames } from './finding-words.ts';
 import { PourForm } from './PourForm.tsx';
 import type { useMoves } from './use-moves.ts';
-import { yardsText } from './VisitCard.tsx';
 
+const words = office.panel;
+const { answers, finishes, kinds, methods, orderStates, states, untold, yards } = office.terms;
 const tabs = ['plan', 'edit', 'people', 'history'] as const;
-const tabWords = { plan: 'Plan', edit: 'Edit', people: 'People', history: 'History' } as const;
 
 /** A visit opened beside the board. */
 export function Panel({
@@ -106,7 +98,7 @@ export function Panel({
       <header className="flex items-start gap-2 border-b border-line px-4 py-3">
         <div className="min-w-0 grow">
           <h2 id="panel-title" ref={heading} tabIndex={-1} className="text-lg outline-none">
-            {pour?.name ?? `${kindWords[visit.kind]}: ${visit.title}`}
+            {pour?.name ?? `${kinds[visit.kind]}: ${visit.title}`}
           </h2>
           <p className="text-sm text-ink-soft">
             {site.name} · {site.address}
@@ -115,18 +107,18 @@ export function Panel({
             <Badge
               tone={visit.state === 'waiting' ? 'waiting' : visit.state === 'firm' ? 'settled' : 'plain'}
             >
-              {stateWords[visit.state]}
+              {states[visit.state]}
             </Badge>
-            {visit.untold && visit.state !== 'pencilled' && <Badge tone="caution">{words.untold}</Badge>}
+            {visit.untold && visit.state !== 'pencilled' && <Badge tone="caution">{untold}</Badge>}
             {pour && (
               <Badge>
-                {yardsText(visit.partYd3 ?? pour.orderedYd3)} · {finishWords[pour.finish]} ·{' '}
-                {methodWords[pour.placingMethod]}
+                {yards(visit.partYd3 ?? pour.orderedYd3)} · {finishes[pour.finish]} ·{' '}
+                {methods[pour.placingMethod]}
               </Badge>
             )}
           </div>
         </div>
-        <Button look="quiet" aria-label="Close the panel" onClick={onClose}>
+        <Button look="quiet" aria-label={words.close} onClick={onClose}>
           <svg
             aria-hidden="true"
             width="16"
@@ -139,7 +131,7 @@ export function Panel({
           </svg>
         </Button>
       </header>
-      <div role="tablist" aria-label="Parts of the panel" className="flex border-b border-line px-2">
+      <div role="tablist" aria-label={words.parts} className="flex border-b border-line px-2">
         {tabs
           .filter((name) => name !== 'edit' || (pour && mayMove))
           .map((name) => (
@@ -153,7 +145,7 @@ export function Panel({
               className={`min-h-tap px-3 ${tab === name ? 'border-b-2 border-settled font-semibold' : 'text-ink-soft'}`}
               onClick={() => setTab(name)}
             >
-              {tabWords[name]}
+              {words.tabs[name]}
             </button>
           ))}
       </div>
@@ -168,87 +160,85 @@ export function Panel({
             {visit.during && (
               <dl className="grid grid-cols-[auto_1fr] gap-x-4 gap-y-1">
                 <Time
-                  label="Day"
+                  label={words.day}
                   value={`${formatDay(siteDayOf(visit.during.startMs, site.zone), 'en')} · ${names('crew', visit.crewId ?? '')}`}
                 />
-                <Time label="Crew there" value={clock(visit.during.startMs)} />
+                <Time label={words.crewThere} value={clock(visit.during.startMs)} />
                 {chain && (
                   <>
-                    <Time label="First truck" value={clock(chain.firstLoadMs)} />
-                    <Time label="Last load out" value={clock(chain.lastLoadMs)} />
+                    <Time label={words.firstTruck} value={clock(chain.firstLoadMs)} />
+                    <Time label={words.lastLoadOut} value={clock(chain.lastLoadMs)} />
                     <Time
-                      label="Window opens, closes"
-                      value={`${clock(chain.window.opensMs)} to ${clock(chain.window.closesMs)}`}
+                      label={words.window}
+                      value={words.fromTo(clock(chain.window.opensMs), clock(chain.window.closesMs))}
                     />
-                    <Time label="Finishing ends" value={clock(chain.finishing.endMs)} />
+                    <Time label={words.finishingEnds} value={clock(chain.finishing.endMs)} />
                     {chain.sawWindow && (
                       <Time
-                        label="Saw between"
-                        value={`${clock(chain.sawWindow.startMs)} and ${clock(chain.sawWindow.endMs)}`}
+                        label={words.sawBetween}
+                        value={words.between(clock(chain.sawWindow.startMs), clock(chain.sawWindow.endMs))}
                       />
                     )}
                     <Time
-                      label="Trucks"
-                      value={`${chain.loads.length} loads every ${Math.round(chain.spacingMin)} min, ${chain.trucksInRotation} in rotation`}
+                      label={words.trucks}
+                      value={words.loads(
+                        chain.loads.length,
+                        Math.round(chain.spacingMin),
+                        chain.trucksInRotation,
+                      )}
                     />
                   </>
                 )}
-                <Time label="Washed up" value={clock(visit.during.endMs)} />
+                <Time label={words.washedUp} value={clock(visit.during.endMs)} />
               </dl>
             )}
             {pour && (
               <dl className="grid grid-cols-[auto_1fr] gap-x-4 gap-y-1">
                 <Time
-                  label="Mix"
-                  value={mix ? `${mix.code} ${mix.name}, ${names('plant', mix.plantId)}` : 'Not chosen'}
+                  label={words.mix}
+                  value={mix ? `${mix.code} ${mix.name}, ${names('plant', mix.plantId)}` : words.notChosen}
                 />
                 {order && (
                   <Time
-                    label="Order"
-                    value={`${yardsText(order.orderedYd3)}, ${orderStateWords[order.state]}`}
+                    label={words.order}
+                    value={`${yards(order.orderedYd3)}, ${orderStates[order.state]}`}
                   />
                 )}
                 {booking && (
                   <Time
-                    label="Pump"
-                    value={`${names('equipment', booking.equipmentId)}, ${orderStateWords[booking.state]}`}
+                    label={words.pump}
+                    value={`${names('equipment', booking.equipmentId)}, ${orderStates[booking.state]}`}
                   />
                 )}
                 <Time
-                  label="Area"
-                  value={
-                    pour.areaFt2 > 0 ? `${Math.round(pour.areaFt2).toLocaleString('en-US')} ft²` : 'Unknown'
-                  }
+                  label={words.area}
+                  value={pour.areaFt2 > 0 ? words.areaFt2(pour.areaFt2) : words.unknown}
                 />
-                {pour.notes && <Time label="Notes" value={pour.notes} />}
-                {site.accessNotes && <Time label="Access" value={site.accessNotes} />}
+                {pour.notes && <Time label={words.notes} value={pour.notes} />}
+                {site.accessNotes && <Time label={words.access} value={site.accessNotes} />}
               </dl>
             )}
             {findings.length > 0 && (
               <section>
-                <h3 className="mb-2 font-semibold">Checks</h3>
+                <h3 className="mb-2 font-semibold">{words.checks}</h3>
                 <FindingList findings={[...findings].sort(compareFindings)} names={names} zone={site.zone} />
-                <p className="mt-2 text-xs text-ink-soft">
-                  Checks advise; people decide. Local codes, the engineer of record and licensed practice come
-                  first.
-                </p>
+                <p className="mt-2 text-xs text-ink-soft">{words.advice}</p>
               </section>
             )}
-            {findings.length === 0 && visit.during && (
-              <p className="text-fits">No check has anything against it.</p>
-            )}
+            {findings.length === 0 && visit.during && <p className="text-fits">{words.nothingAgainst}</p>}
             {followUps.length > 0 && (
               <section>
-                <h3 className="mb-1 font-semibold">Follow-ups</h3>
+                <h3 className="mb-1 font-semibold">{words.followUps}</h3>
                 <ul className="flex flex-col gap-1">
                   {followUps.map((row) => (
                     <li key={row.id}>
                       <button type="button" className="underline" onClick={() => onOpen(row.id)}>
-                        {kindWords[row.kind]}
+                        {kinds[row.kind]}
                       </button>{' '}
                       <span className="text-sm text-ink-soft">
-                        {stateWords[row.state]}
-                        {row.window && `, ${clock(row.window.startMs)} to ${clock(row.window.endMs)}`}
+                        {states[row.state]}
+                        {row.window &&
+                          `, ${words.fromTo(clock(row.window.startMs), clock(row.window.endMs))}`}
                       </span>
                     </li>
                   ))}
@@ -266,11 +256,11 @@ export function Panel({
                           params: { slug, id: visitId },
                           body: { baseVersion: visit.version },
                         }),
-                        'Firm. People are told once it has settled.',
+                        words.firm,
                       )
                     }
                   >
-                    Make firm
+                    {words.makeFirm}
                   </Button>
                 )}
                 {visit.untold && visit.state !== 'pencilled' && (
@@ -278,18 +268,17 @@ export function Panel({
                     look="main"
                     onClick={() =>
                       void call(sendNow, { params: { slug, id: visitId } }).then(
-                        ({ due }) =>
-                          showToast(due ? 'On its way to everyone concerned.' : 'There is nothing to tell.'),
+                        ({ due }) => showToast(due ? words.onItsWay : words.nothingToTell),
                         (error: unknown) =>
-                          showToast(error instanceof Error ? error.message : 'Not sent.', { tone: 'stop' }),
+                          showToast(error instanceof Error ? error.message : words.notSent, { tone: 'stop' }),
                       )
                     }
                   >
-                    Send now
+                    {words.sendNow}
                   </Button>
                 )}
                 {(visit.state === 'pencilled' || visit.state === 'firm') && (
-                  <Button onClick={() => void moves.putBack(visitId)}>Back to waiting</Button>
+                  <Button onClick={() => void moves.putBack(visitId)}>{words.backToWaiting}</Button>
                 )}
                 {visit.state !== 'called-off' && visit.state !== 'done' && (
                   <CallOff
@@ -299,7 +288,7 @@ export function Panel({
                           params: { slug, id: visitId },
                           body: { baseVersion: visit.version, reason },
                         }),
-                        'Called off.',
+                        words.calledOff,
                       ).then(onClose)
                     }
                   />
@@ -316,7 +305,7 @@ export function Panel({
             snapshot={snapshot}
             names={names}
             zone={site.zone}
-            onSaved={(change) => moves.done('Saved.', change)}
+            onSaved={(change) => moves.done(office.pourForm.saved, change)}
           />
         )}
         {(tab === 'people' || tab === 'history') && (
@@ -348,7 +337,7 @@ function CallOff({ onCallOff }: { onCallOff: (reason: string) => Promise<void> }
   if (!asking)
     return (
       <Button look="danger" onClick={() => setAsking(true)}>
-        Call off…
+        {words.callOffAsk}
       </Button>
     );
   return (
@@ -360,8 +349,8 @@ function CallOff({ onCallOff }: { onCallOff: (reason: string) => Promise<void> }
       }}
     >
       <input
-        aria-label="Why is it called off?"
-        placeholder="Why?"
+        aria-label={words.callOffReason}
+        placeholder={words.callOffWhy}
         required
         maxLength={500}
         className="input"
@@ -369,7 +358,7 @@ function CallOff({ onCallOff }: { onCallOff: (reason: string) => Promise<void> }
         onChange={(event) => setReason(event.target.value)}
       />
       <Button type="submit" look="danger">
-        Call off
+        {words.callOff}
       </Button>
     </form>
   );
@@ -394,11 +383,11 @@ function VisitRecord({
     queryFn: ({ signal }) => call(readVisit, { params: { slug, id: visitId }, signal }),
   });
   if (error) return <p className="text-stop">{error.message}</p>;
-  if (!data) return <p>{words.loading}</p>;
+  if (!data) return <p>{office.board.loading}</p>;
   if (part === 'people')
     return (
       <ul className="flex flex-col divide-y divide-line">
-        {data.people.length === 0 && <li>Nobody is on it.</li>}
+        {data.people.length === 0 && <li>{words.nobody}</li>}
         {data.people.map((person) => (
           <li key={person.personId} className="flex items-center justify-between gap-2 py-2">
             <span>
@@ -407,10 +396,10 @@ function VisitRecord({
             </span>
             <Badge tone={person.answer === 'yes' ? 'fits' : person.answer === 'no' ? 'stop' : 'plain'}>
               {person.state === 'open'
-                ? 'Asked'
+                ? words.asked
                 : person.answer === 'none' && !person.told
-                  ? words.untold
-                  : answerWords[person.answer]}
+                  ? untold
+                  : answers[person.answer]}
             </Badge>
           </li>
         ))}
@@ -419,11 +408,11 @@ function VisitRecord({
   const when = (ms: number) => `${formatDay(siteDayOf(ms, zone), 'en')}, ${formatClock(ms, zone, 'en')}`;
   return (
     <ol className="flex flex-col gap-2">
-      {data.history.length === 0 && <li>Nothing yet.</li>}
+      {data.history.length === 0 && <li>{words.nothingYet}</li>}
       {data.history.map((entry) => (
         <li key={entry.id} className="border-l-2 border-line-strong pl-3">
           <p className="text-sm text-ink-soft">
-            {when(entry.atMs)} · {entry.actorName ?? 'Strikeboard'}
+            {when(entry.atMs)} · {entry.actorName ?? office.product}
           </p>
           <p>{entry.action.replaceAll('-', ' ')}</p>
           {entry.reason && <p className="text-sm">“{entry.reason}”</p>}

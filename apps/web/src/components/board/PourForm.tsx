@@ -4,13 +4,16 @@ import { finishes, jointings, placingMethods } from '@strikeboard/domain/vocabul
 import { type FormEvent, useState } from 'react';
 import { editPour } from '../../lib/api/schemas/pours.ts';
 import { ApiProblem, call } from '../../lib/client/api.ts';
+import { office } from '../../lib/words/office.en.ts';
 import { Button } from '../ui/Button.tsx';
 import { Field } from '../ui/Field.tsx';
 import type { BoardPatch } from './board-data.ts';
-import { finishWords, jointingWords, methodWords } from './board-words.ts';
 import { FindingList } from './FindingList.tsx';
 import type { FindingNames } from './finding-words.ts';
 import { changesIn, draftOf, notNumbers, type PourDraft } from './pour-fields.ts';
+
+const words = office.pourForm;
+const { terms } = office;
 
 /** Edits a pour. What was typed stays when the server refuses; what it minds stands at the field. */
 export function PourForm({
@@ -55,7 +58,7 @@ export function PourForm({
     const typed = typedWrong[field];
     if (typed) return typed;
     const expected = problem?.expected(field);
-    return expected ? `Expected ${expected}.` : null;
+    return expected ? words.expected(expected) : null;
   };
 
   const save = async (event: FormEvent) => {
@@ -131,7 +134,7 @@ export function PourForm({
 
   return (
     <form onSubmit={(event) => void save(event)} className="flex flex-col gap-3">
-      <Field label="Name" error={error('name')}>
+      <Field label={words.name} error={error('name')}>
         {(control) => (
           <input
             {...control}
@@ -142,15 +145,15 @@ export function PourForm({
         )}
       </Field>
       <div className="grid grid-cols-2 gap-3">
-        {number('orderedYd3', 'Ordered, yd³')}
+        {number('orderedYd3', words.ordered)}
         {number(
           'placingRateYd3PerHour',
-          'Placing rate, yd³/h',
-          `Blank: ${snapshot.rules.placingRateYd3PerHour}`,
+          words.placingRate,
+          words.blankIs(snapshot.rules.placingRateYd3PerHour),
         )}
-        {choice('finish', 'Finish', finishes, finishWords)}
-        {choice('placingMethod', 'Placing', placingMethods, methodWords)}
-        <Field label="Mix" error={error('mixId')}>
+        {choice('finish', words.finish, finishes, terms.finishes)}
+        {choice('placingMethod', words.placing, placingMethods, terms.methods)}
+        <Field label={words.mix} error={error('mixId')}>
           {(control) => (
             <select
               {...control}
@@ -158,7 +161,7 @@ export function PourForm({
               value={draft.mixId}
               onChange={(event) => set('mixId', event.target.value)}
             >
-              <option value="">Not chosen</option>
+              <option value="">{words.notChosen}</option>
               {snapshot.mixes.map((mix) => (
                 <option key={mix.id} value={mix.id}>
                   {mix.code} · {names('plant', mix.plantId)}
@@ -167,7 +170,7 @@ export function PourForm({
             </select>
           )}
         </Field>
-        <Field label="Pump" error={error('pumpId')}>
+        <Field label={words.pump} error={error('pumpId')}>
           {(control) => (
             <select
               {...control}
@@ -175,7 +178,7 @@ export function PourForm({
               value={draft.pumpId}
               onChange={(event) => set('pumpId', event.target.value)}
             >
-              <option value="">Any that suits</option>
+              <option value="">{words.anyPump}</option>
               {snapshot.equipment
                 .filter((piece) => piece.kind === 'pump')
                 .map((piece) => (
@@ -186,11 +189,11 @@ export function PourForm({
             </select>
           )}
         </Field>
-        {number('peopleToPlace', 'People to place', 'Blank: reckoned')}
-        {number('peopleToFinish', 'People to finish', 'Blank: reckoned')}
-        {number('concreteTempF', 'Concrete, °F', `Blank: ${snapshot.rules.concreteTempF}`)}
-        {choice('jointing', 'Joints', jointings, jointingWords)}
-        <Field label="Wanted on" error={error('wantedOn')}>
+        {number('peopleToPlace', words.peopleToPlace, words.blankReckoned)}
+        {number('peopleToFinish', words.peopleToFinish, words.blankReckoned)}
+        {number('concreteTempF', words.concreteTemp, words.blankIs(snapshot.rules.concreteTempF))}
+        {choice('jointing', words.joints, jointings, terms.jointings)}
+        <Field label={words.wantedOn} error={error('wantedOn')}>
           {(control) => (
             <input
               {...control}
@@ -208,11 +211,11 @@ export function PourForm({
             checked={draft.willCall}
             onChange={(event) => set('willCall', event.target.checked)}
           />
-          Will-call
+          {words.willCall}
         </label>
       </div>
       <fieldset className="flex flex-col gap-1">
-        <legend className="text-sm font-medium">Ready</legend>
+        <legend className="text-sm font-medium">{words.ready}</legend>
         {draft.readiness.map((entry) => (
           <label key={entry.item} className="flex min-h-9 items-center gap-2">
             <input
@@ -233,8 +236,8 @@ export function PourForm({
         ))}
         <div className="flex gap-2">
           <input
-            aria-label="Another thing to be ready"
-            placeholder="Base compacted, forms, steel, inspection…"
+            aria-label={words.readyItem}
+            placeholder={words.readyExample}
             className="input"
             value={newItem}
             maxLength={80}
@@ -247,11 +250,11 @@ export function PourForm({
               setNewItem('');
             }}
           >
-            Add
+            {words.add}
           </Button>
         </div>
       </fieldset>
-      <Field label="Notes" error={error('notes')}>
+      <Field label={words.notes} error={error('notes')}>
         {(control) => (
           <textarea
             {...control}
@@ -267,7 +270,7 @@ export function PourForm({
           <p className="font-medium text-stop">{problem.problem.detail}</p>
           {stale && (
             <div className="flex flex-wrap items-center gap-2">
-              {problem.problem.changed && <p>Changed meanwhile: {problem.problem.changed.join(', ')}.</p>}
+              {problem.problem.changed && <p>{words.changedMeanwhile(problem.problem.changed)}</p>}
               <Button
                 onClick={() => {
                   // What was typed stays; only what it is compared with becomes today's.
@@ -275,7 +278,7 @@ export function PourForm({
                   setProblem(null);
                 }}
               >
-                Keep what I typed and try again
+                {words.keepMine}
               </Button>
               <Button
                 onClick={() => {
@@ -284,13 +287,13 @@ export function PourForm({
                   setProblem(null);
                 }}
               >
-                Take theirs
+                {words.takeTheirs}
               </Button>
             </div>
           )}
           <FindingList findings={[...refused, ...asked]} names={names} zone={zone} />
           {asked.length > 0 && (
-            <Field label="Why is this all right?" error={null}>
+            <Field label={words.reason} error={null}>
               {(control) => (
                 <textarea
                   {...control}
@@ -307,10 +310,10 @@ export function PourForm({
       )}
       <div className="sticky bottom-0 flex justify-end gap-2 bg-sheet py-2">
         <Button disabled={!dirty || busy} onClick={() => setDraft(before.draft)}>
-          Undo typing
+          {words.undoTyping}
         </Button>
         <Button type="submit" look="main" busy={busy} disabled={!dirty}>
-          Save
+          {office.save}
         </Button>
       </div>
     </form>

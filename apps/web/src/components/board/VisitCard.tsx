@@ -4,9 +4,12 @@ import type { Finding, Severity } from '@strikeboard/domain/finding';
 import type { Pour, Site, Visit } from '@strikeboard/domain/snapshot';
 import { formatClock } from '@strikeboard/domain/zone';
 import { memo } from 'react';
+import { office } from '../../lib/words/office.en.ts';
 import { SeverityMark } from '../ui/SeverityMark.tsx';
-import { countOf, finishWords, kindWords, methodWords, stateWords, words } from './board-words.ts';
 import { ChainStrip } from './ChainStrip.tsx';
+
+const words = office.card;
+const { countOf, finishes, kinds, methods, states, yards, untold } = office.terms;
 
 export interface CardProps {
   visit: Visit;
@@ -28,11 +31,6 @@ function worstCounts(findings: readonly Finding[]): { severity: Severity; count:
     if (count > 0) return { severity, count };
   }
   return null;
-}
-
-/** Yards without idle zeros: 32, 9.25. */
-export function yardsText(yd3: number): string {
-  return `${Number(yd3.toFixed(2))} yd³`;
 }
 
 /** What a card says, without its shell: memoised, since the shell is drawn again at every pointer move. */
@@ -73,17 +71,13 @@ export const CardFace = memo(function CardFace({
           </div>
         )}
         <div className="flex items-baseline gap-1 font-semibold whitespace-nowrap">
-          {start && (
-            <span className="shrink-0">
-              {start.replace(':00 ', ' ').replace(' AM', 'a').replace(' PM', 'p')}
-            </span>
-          )}
-          <span className="truncate">{pour ? site.name : kindWords[visit.kind]}</span>
+          {start && <span className="shrink-0">{words.startsAt(start)}</span>}
+          <span className="truncate">{pour ? site.name : kinds[visit.kind]}</span>
         </div>
         {pour ? (
           <div className="truncate">
-            {yardsText(visit.partYd3 ?? pour.orderedYd3)} {finishWords[pour.finish]}
-            {!narrow && <span className="text-ink-soft"> · {methodWords[pour.placingMethod]}</span>}
+            {yards(visit.partYd3 ?? pour.orderedYd3)} {finishes[pour.finish]}
+            {!narrow && <span className="text-ink-soft"> · {methods[pour.placingMethod]}</span>}
           </div>
         ) : (
           <div className="truncate">{site.name}</div>
@@ -98,15 +92,15 @@ export const CardFace = memo(function CardFace({
           )}
           {overdue && <span className="font-medium text-stop">{words.overdue}</span>}
           {pour?.willCall && <span className="font-medium">{words.willCall}</span>}
-          {visit.state === 'pencilled' && <span className="text-ink-soft">{stateWords.pencilled}</span>}
+          {visit.state === 'pencilled' && <span className="text-ink-soft">{states.pencilled}</span>}
           {!waiting && answers.asked > 0 && !narrow && (
             <span className={answers.yes === answers.asked ? 'text-fits' : 'text-ink-soft'}>
-              {answers.yes} of {answers.asked} yes
+              {words.yesOf(answers.yes, answers.asked)}
             </span>
           )}
           {visit.untold && visit.state === 'firm' && (
-            <span className="size-2 shrink-0 rounded-full border-2 border-caution" title={words.untold}>
-              <span className="sr-only">{words.untold}</span>
+            <span className="size-2 shrink-0 rounded-full border-2 border-caution" title={untold}>
+              <span className="sr-only">{untold}</span>
             </span>
           )}
         </div>
@@ -118,17 +112,20 @@ export const CardFace = memo(function CardFace({
 /** Everything a card says, in one sentence for those who hear it. */
 export function cardLabel({ visit, site, pour, findings, answers }: CardProps): string {
   const parts = [
-    pour ? `${pour.name}, ${site.name}` : `${kindWords[visit.kind]}, ${site.name}`,
-    stateWords[visit.state],
+    pour ? `${pour.name}, ${site.name}` : `${kinds[visit.kind]}, ${site.name}`,
+    states[visit.state],
     visit.during
-      ? `from ${formatClock(visit.during.startMs, site.zone, 'en')} to ${formatClock(visit.during.endMs, site.zone, 'en')}`
+      ? words.fromTo(
+          formatClock(visit.during.startMs, site.zone, 'en'),
+          formatClock(visit.during.endMs, site.zone, 'en'),
+        )
       : null,
-    pour ? `${yardsText(visit.partYd3 ?? pour.orderedYd3)}, ${finishWords[pour.finish]}` : null,
+    pour ? `${yards(visit.partYd3 ?? pour.orderedYd3)}, ${finishes[pour.finish]}` : null,
     ...(['stop', 'caution'] as const).map((severity) => {
       const count = findings.filter((finding) => finding.severity === severity).length;
       return count > 0 ? countOf(severity, count) : null;
     }),
-    answers.asked > 0 ? `${answers.yes} of ${answers.asked} said yes` : null,
+    answers.asked > 0 ? words.saidYesOf(answers.yes, answers.asked) : null,
   ];
   return parts.filter((part) => part !== null).join(', ');
 }

@@ -1,8 +1,10 @@
 import type { Snapshot, Visit } from '@strikeboard/domain/snapshot';
 import { addDays, daysBetween, type SiteDay } from '@strikeboard/domain/zone';
-import { words } from './board-words.ts';
+import { office } from '../../lib/words/office.en.ts';
 import type { CardProps } from './VisitCard.tsx';
 import { VisitCard } from './VisitCard.tsx';
+
+const words = office.board;
 
 /** Where each waiting visit hangs: under its day, or at the left end. */
 export interface Waiting {
@@ -99,7 +101,7 @@ export function WaitingStrip({
         <h2 className="mb-1 flex flex-wrap items-baseline gap-x-2 text-sm">
           {words.waiting} <span className="font-normal">{count}</span>
           {waiting.later > 0 && (
-            <span className="text-xs font-normal text-ink-soft">{waiting.later} on other days</span>
+            <span className="text-xs font-normal text-ink-soft">{words.onOtherDays(waiting.later)}</span>
           )}
         </h2>
         {waiting.undated.length > 0 && (

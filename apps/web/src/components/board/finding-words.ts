@@ -4,6 +4,9 @@ import type { Finding } from '@strikeboard/domain/finding';
 import type { Snapshot } from '@strikeboard/domain/snapshot';
 import { formatClock, formatDay, siteDayOf } from '@strikeboard/domain/zone';
 import { wordsOfFinding } from '../../lib/words/findings.en.ts';
+import { office } from '../../lib/words/office.en.ts';
+
+const words = office.finding;
 
 /** Names of the rows that a finding may speak of. */
 export type FindingNames = (kind: Finding['against'][number]['kind'], id: string) => string;
@@ -17,15 +20,7 @@ export function namesOf(snapshot: Snapshot | undefined): FindingNames {
     const pours = new Map(snapshot.pours.map((pour) => [pour.id, pour.name]));
     for (const visit of snapshot.visits) names.set(visit.id, pours.get(visit.pourId ?? '') ?? visit.title);
   }
-  const unnamed = {
-    visit: 'another visit',
-    person: 'someone',
-    crew: 'another crew',
-    equipment: 'the equipment',
-    plant: 'the plant',
-    site: 'another site',
-  } as const;
-  return (kind, id) => names.get(id) ?? unnamed[kind];
+  return (kind, id) => names.get(id) ?? words.unnamed[kind];
 }
 
 const units: readonly [suffix: string, unit: string][] = [
@@ -54,8 +49,8 @@ export function labelOf(key: string): { label: string; unit: string } {
 }
 
 function valueText(key: string, value: Finding['facts'][string], zone: string): string {
-  if (value === null) return 'unknown';
-  if (typeof value === 'boolean') return value ? 'yes' : 'no';
+  if (value === null) return words.unknown;
+  if (typeof value === 'boolean') return value ? words.yes : words.no;
   if (typeof value === 'string') return value;
   if (key.endsWith('Ms'))
     return `${formatDay(siteDayOf(value, zone), 'en')}, ${formatClock(value, zone, 'en')}`;

@@ -2,6 +2,9 @@
 
 import type { Pour, Visit } from '@strikeboard/domain/snapshot';
 import { finishes, jointings, placingMethods } from '@strikeboard/domain/vocabulary';
+import { office } from '../../lib/words/office.en.ts';
+
+const words = office.pourForm;
 
 /** Every field as text, so that what was typed stays as it was typed. */
 export type PourDraft = Record<
@@ -84,8 +87,7 @@ export function notNumbers(draft: PourDraft): Partial<Record<string, string>> {
     'peopleToPlace',
     'peopleToFinish',
   ] as const)
-    if (Number.isNaN(numberIn(draft[key]) ?? 0))
-      wrong[key] = `"${draft[key].trim()}" is not a number; expected one such as 12.5.`;
-  if (draft.orderedYd3.trim() === '') wrong.orderedYd3 = 'Expected yards, such as 12.5.';
+    if (Number.isNaN(numberIn(draft[key]) ?? 0)) wrong[key] = words.notANumber(draft[key].trim());
+  if (draft.orderedYd3.trim() === '') wrong.orderedYd3 = words.yardsMissing;
   return wrong;
 }

@@ -8,11 +8,13 @@ import { formatClock, formatDay, siteDayOf } from '@strikeboard/domain/zone';
 import { useCallback, useState } from 'react';
 import { placeVisit, returnVisit, undoChange } from '../../lib/api/schemas/board.ts';
 import { ApiProblem, call, newKey } from '../../lib/client/api.ts';
+import { office } from '../../lib/words/office.en.ts';
 import { showToast } from '../ui/Toasts.tsx';
 import type { BoardPatch } from './board-data.ts';
-import { words } from './board-words.ts';
 import type { Refusal } from './DropDialog.tsx';
 
+const words = office.board;
+const { cannotStand, needsReason: asksReason, withCaution, withNothing } = office.drop;
 const FITS_SHOWN = 4;
 
 /** "Tue Dec 8, 6:30 AM" on the site's clock. */
@@ -97,7 +99,7 @@ export function useMoves({ slug, snapshot, index, apply, show, reload, say }: Bo
             }).map(({ crewId, crewStartMs, worst }) => ({
               crewId,
               crewStartMs,
-              label: `${whenText(crewStartMs, zone)} · ${index.crews.get(crewId)?.name ?? ''} · ${worst === 'caution' ? 'with a caution' : words.fits.toLowerCase()}`,
+              label: `${whenText(crewStartMs, zone)} · ${index.crews.get(crewId)?.name ?? ''} · ${worst === 'caution' ? withCaution : withNothing}`,
             }))
           : [];
       setRefusal({
@@ -110,9 +112,7 @@ export function useMoves({ slug, snapshot, index, apply, show, reload, say }: Bo
         accept,
       });
       say(
-        kind === 'stops'
-          ? words.cannotStand(titleOf(placement.visitId))
-          : words.needsReason(titleOf(placement.visitId)),
+        kind === 'stops' ? cannotStand(titleOf(placement.visitId)) : asksReason(titleOf(placement.visitId)),
       );
     },
     [index, zoneOf, titleOf, say],
