@@ -66,7 +66,7 @@ test.describe('what cannot be is refused, and nothing of it is kept', () => {
   test('values of the wrong kind: 422, each field by its name with what is right', async () => {
     const problem = await problemOf(
       await post('pours', {
-        ...{ siteId: 'the big one', name: '', orderedYd3: '12', areaFt2: -4, thicknessIn: 1e400 },
+        ...{ siteId: 'the big one', name: '', orderedYd3: '12', areaFt2: -4, thicknessIn: '4 in' },
         ...{ finish: 'shiny', placingMethod: null, wantedOn: '2026-02-30', readiness: 'all' },
       }),
       422,

@@ -74,6 +74,18 @@ export class BoardPage {
     await expect(this.spoken).toContainText(title);
   }
 
+  /** Carries the held card from the waiting strip up to a crew's lane, and waits until what is read out says so. */
+  async carryUpTo(crewName: string, said: string): Promise<void> {
+    const lanes = await this.page
+      .getByRole('region')
+      .filter({ has: this.page.locator('[data-lane]') })
+      .all();
+    const names = await Promise.all(lanes.map((lane) => lane.getAttribute('aria-label')));
+    const own = names.filter((name) => name !== 'Board: crews by days');
+    for (const name of own.slice(own.indexOf(crewName)).toReversed())
+      await this.key('ArrowUp', `${name}, ${name === crewName ? said : ''}`);
+  }
+
   /** Presses a key while a card is held, and waits until what is read out says the given words. */
   async key(code: string, said: string | RegExp): Promise<void> {
     await this.page.keyboard.press(code);

@@ -85,9 +85,7 @@ test('two dispatchers see each other, and a stale card is refused', async ({
 
   await test.step("one's move is at the other within a second", async () => {
     await danas.pickUp(danas.card(danas.waiting, label), `Picked up ${title}.`);
-    const crews = (await api.read(monday)).crews.length;
-    for (let above = 1; above < crews; above += 1) await danas.page.keyboard.press('ArrowUp');
-    await danas.key('ArrowUp', `${first.name}, ${formatDay(monday, 'en')}, 6:00 AM`);
+    await danas.carryUpTo(first.name, `${formatDay(monday, 'en')}, 6:00 AM`);
     const changed = danas.page.waitForResponse((answer) => answer.url().endsWith('/place'));
     await danas.page.keyboard.press('Space');
     await changed;
