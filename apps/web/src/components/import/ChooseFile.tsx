@@ -1,6 +1,8 @@
 import type { IntakeKind } from '@strikeboard/domain/intake/fields';
 import { useState } from 'react';
-import { kindWords } from './import-words.ts';
+import { office } from '../../lib/words/office.en.ts';
+
+const words = office.import;
 
 /** Kind and file, by choosing or by dropping. */
 export function ChooseFile({
@@ -22,7 +24,7 @@ export function ChooseFile({
   return (
     <section className="sheet p-5">
       <fieldset>
-        <legend className="font-semibold">What is in the file?</legend>
+        <legend className="font-semibold">{words.whatIsInIt}</legend>
         <div className="mt-2 grid gap-2 sm:grid-cols-2 lg:grid-cols-4">
           {order.map((one, index) => (
             <label
@@ -40,9 +42,9 @@ export function ChooseFile({
               />
               <span>
                 <span className="font-medium">
-                  {index + 1}. {kindWords[one].Many}
+                  {index + 1}. {words.kinds[one].Many}
                 </span>
-                <span className="block text-sm text-ink-soft">{kindWords[one].columns}</span>
+                <span className="block text-sm text-ink-soft">{words.kinds[one].columns}</span>
               </span>
             </label>
           ))}
@@ -65,7 +67,7 @@ export function ChooseFile({
         }}
       >
         <label className="button button-main focus-within:outline-3 focus-within:outline-focus">
-          Choose a CSV or XLSX file
+          {words.chooseFile}
           <input
             type="file"
             className="sr-only"
@@ -73,9 +75,7 @@ export function ChooseFile({
             onChange={(event) => take(event.target.files)}
           />
         </label>
-        <p className="text-sm text-ink-soft">
-          Or drop it here. Columns may stand in any order and be called what you call them. Up to 10 MB.
-        </p>
+        <p className="text-sm text-ink-soft">{words.dropHint}</p>
       </div>
     </section>
   );

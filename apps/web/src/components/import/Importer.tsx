@@ -12,12 +12,14 @@ import {
 } from '../../lib/api/schemas/imports.ts';
 import { ApiProblem, call, newKey } from '../../lib/client/api.ts';
 import { sheetSentence } from '../../lib/sheets/sheet-problem.ts';
+import { office } from '../../lib/words/office.en.ts';
 import { Button } from '../ui/Button.tsx';
 import { ChooseFile } from './ChooseFile.tsx';
-import { kindWords } from './import-words.ts';
 import { Mapping } from './Mapping.tsx';
 import { Problems } from './Problems.tsx';
 import { Records } from './Records.tsx';
+
+const words = office.import;
 
 /** What can be brought in, in the order in which one needs the other. */
 const order: readonly IntakeKind[] = ['people', 'crews', 'sites', 'pours'];
@@ -44,7 +46,7 @@ export function Importer({ slug, id }: { slug: string; id: string | null }) {
     try {
       await work();
     } catch (error) {
-      setProblem(error instanceof ApiProblem ? error.message : 'That did not work. Try again.');
+      setProblem(error instanceof ApiProblem ? error.message : office.didNotWork);
     } finally {
       setBusy(false);
     }
@@ -126,7 +128,7 @@ export function Importer({ slug, id }: { slug: string; id: string | null }) {
       )}
       {step.name === 'reading' && (
         <p role="status" className="sheet p-6">
-          Reading {step.fileName}… A file of 5,000 rows takes a few seconds.
+          {words.reading(step.fileName)}
         </p>
       )}
       {step.name === 'preview' && (
@@ -144,14 +146,10 @@ export function Importer({ slug, id }: { slug: string; id: string | null }) {
       )}
       {step.name === 'done' && (
         <div className="sheet p-6" role="status">
-          <h2 className="text-xl">
-            {step.counts.created}{' '}
-            {step.counts.created === 1 ? kindWords[step.shown.kind].one : kindWords[step.shown.kind].many}{' '}
-            added
-          </h2>
+          <h2 className="text-xl">{words.added(step.shown.kind, step.counts.created)}</h2>
           <p className="mt-1 text-ink-soft">
-            {step.counts.updated > 0 && `${step.counts.updated} filled in. `}
-            {step.counts.unchanged > 0 && `${step.counts.unchanged} here already, left as they are.`}
+            {step.counts.updated > 0 && words.wasFilledIn(step.counts.updated)}
+            {step.counts.unchanged > 0 && words.leftAsTheyAre(step.counts.unchanged)}
           </p>
           <div className="mt-4 flex flex-wrap gap-2">
             {nextKind(step.shown.kind) !== null && (
@@ -162,14 +160,14 @@ export function Importer({ slug, id }: { slug: string; id: string | null }) {
                   setStep({ name: 'choose' });
                 }}
               >
-                Next: {kindWords[nextKind(step.shown.kind) ?? 'pours'].many}
+                {words.next(nextKind(step.shown.kind) ?? 'pours')}
               </Button>
             )}
             <a
               className={`button ${step.shown.kind === 'pours' ? 'button-main' : ''}`}
               href={`/${slug}/board`}
             >
-              To the board
+              {words.toBoard}
             </a>
           </div>
         </div>
@@ -192,39 +190,31 @@ function Preview(of: {
   onDiscard: () => void;
 }) {
   const { shown, busy, sheetNames } = of;
-  const words = kindWords[shown.kind];
   const { created, updated, unchanged } = shown.forecast;
   const willDo = [
-    `${created} ${created === 1 ? words.one : words.many} will be added`,
-    updated > 0 ? `${updated} filled in` : null,
-    unchanged > 0 ? `${unchanged} are here already` : null,
+    words.willBeAdded(shown.kind, created),
+    updated > 0 ? words.filledIn(updated) : null,
+    unchanged > 0 ? words.hereAlready(unchanged) : null,
   ].filter((part) => part !== null);
   return (
     <>
       <section
         className="sheet flex flex-wrap items-center gap-x-6 gap-y-3 p-4"
-        aria-label="What will happen"
+        aria-label={words.willHappen}
       >
         <div className="min-w-0 grow">
           <h2 className="text-lg break-words">{shown.fileName}</h2>
           <p className="text-sm text-ink-soft">
-            {words.Many}, {shown.rowCount} rows
-            {shown.headerLine === null
-              ? ', no row looks like headings'
-              : `, headings in row ${shown.headerLine}`}
-            {shown.skipped.length > 0 && `, ${shown.skipped.length} rows skipped`}
+            {words.rows(shown.kind, shown.rowCount)}
+            {shown.headerLine === null ? words.noHeadings : words.headingsIn(shown.headerLine)}
+            {shown.skipped.length > 0 && words.skippedOf(shown.skipped.length)}
           </p>
           <p className="mt-1 font-medium">{willDo.join(', ')}.</p>
-          {shown.errorCount > 0 && (
-            <p className="font-medium text-stop">
-              {shown.errorCount} {shown.errorCount === 1 ? 'cell keeps its row' : 'cells keep their rows'}{' '}
-              out.
-            </p>
-          )}
+          {shown.errorCount > 0 && <p className="font-medium text-stop">{words.keptOut(shown.errorCount)}</p>}
         </div>
         {sheetNames.length > 1 && (
           <label className="flex flex-col gap-1 text-sm font-medium">
-            Sheet
+            {words.sheet}
             <select
               className="input"
               value={shown.sheetName ?? ''}
@@ -239,7 +229,7 @@ function Preview(of: {
         )}
         <div className="flex gap-2">
           <Button onClick={of.onDiscard} disabled={busy}>
-            Put aside
+            {words.putAside}
           </Button>
           <Button
             look="main"
@@ -248,8 +238,8 @@ function Preview(of: {
             onClick={of.onAccept}
           >
             {shown.errorCount > 0
-              ? `Accept the other ${shown.recordCount}`
-              : `Accept all ${shown.recordCount}`}
+              ? words.acceptOthers(shown.recordCount)
+              : words.acceptAll(shown.recordCount)}
           </Button>
         </div>
       </section>

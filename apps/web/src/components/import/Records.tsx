@@ -1,16 +1,19 @@
 import type { Import } from '../../lib/api/schemas/imports.ts';
+import { office } from '../../lib/words/office.en.ts';
+
+const words = office.import;
 
 /** The first records as they were understood, for a last look. */
 export function Records({ shown }: { shown: Import }) {
   const columns = [...new Set(shown.records.flatMap(({ cells }) => Object.keys(cells)))];
   if (shown.records.length === 0) return null;
   return (
-    <section className="sheet" aria-label="As it was read">
+    <section className="sheet" aria-label={words.asRead}>
       <h3 className="border-b border-line px-4 py-2">
-        As it was read
+        {words.asRead}
         {shown.recordCount > shown.records.length && (
           <span className="ml-2 text-sm font-normal text-ink-soft">
-            the first {shown.records.length} of {shown.recordCount}
+            {words.firstOf(shown.records.length, shown.recordCount)}
           </span>
         )}
       </h3>
@@ -18,7 +21,7 @@ export function Records({ shown }: { shown: Import }) {
         <table className="table text-sm">
           <thead>
             <tr>
-              <th scope="col">Line</th>
+              <th scope="col">{words.line}</th>
               {columns.map((column) => (
                 <th key={column} scope="col">
                   {column}

@@ -6,10 +6,11 @@ import { useState } from 'react';
 import { listNotices, type NoticeView } from '../../lib/api/schemas/notices.ts';
 import { ApiProblem, call } from '../../lib/client/api.ts';
 import { queryClient } from '../../lib/client/query-client.ts';
-import { en } from '../../lib/words/en.ts';
+import { office } from '../../lib/words/office.en.ts';
 import { Badge, type Tone } from '../ui/Badge.tsx';
 import { Button } from '../ui/Button.tsx';
 
+const words = office.notices;
 const REFRESH_MS = 5_000;
 
 const tones: Record<NoticeState, Tone> = {
@@ -44,7 +45,7 @@ export function NoticeList({ slug, zone }: { slug: string; zone: string }) {
     <>
       <div className="mt-4 flex flex-wrap items-center gap-2">
         <fieldset className="flex flex-wrap gap-1">
-          <legend className="sr-only">State</legend>
+          <legend className="sr-only">{words.state}</legend>
           {[null, ...noticeStates].map((one) => (
             <Button
               key={one ?? 'all'}
@@ -52,25 +53,23 @@ export function NoticeList({ slug, zone }: { slug: string; zone: string }) {
               aria-pressed={one === state}
               onClick={() => setState(one)}
             >
-              {one === null ? 'All' : en.noticeStates[one]}
+              {one === null ? words.all : words.states[one]}
             </Button>
           ))}
         </fieldset>
         <Button className="ml-auto" busy={list.isRefetching} onClick={() => void list.refetch()}>
-          Refresh
+          {words.refresh}
         </Button>
       </div>
       {list.error && (
         <p role="alert" className="mt-4 bg-stop-wash px-3 py-2 text-stop">
-          {list.error instanceof ApiProblem ? list.error.message : 'The notices could not be read.'}
+          {list.error instanceof ApiProblem ? list.error.message : words.failed}
         </p>
       )}
-      {list.isPending && <p className="mt-6 text-ink-soft">Reading the notices…</p>}
+      {list.isPending && <p className="mt-6 text-ink-soft">{words.loading}</p>}
       {list.isSuccess && notices.length === 0 && (
         <p className="sheet mt-6 p-6 text-ink-soft">
-          {state === null
-            ? 'Nobody has been told anything yet. People are told once a visit within the telling horizon has settled.'
-            : `No notice is ${en.noticeStates[state].toLowerCase()}.`}
+          {state === null ? words.nothingYet : words.noneOf(words.states[state])}
         </p>
       )}
       <ul className="mt-4 flex flex-col gap-2">
@@ -80,7 +79,7 @@ export function NoticeList({ slug, zone }: { slug: string; zone: string }) {
       </ul>
       {list.hasNextPage && (
         <Button className="mt-4" busy={list.isFetchingNextPage} onClick={() => void list.fetchNextPage()}>
-          Show older
+          {words.showOlder}
         </Button>
       )}
     </>
@@ -94,30 +93,28 @@ function Notice({ notice, zone }: { notice: NoticeView; zone: string }) {
       <div>
         <p className="flex flex-wrap items-center gap-2">
           <span className="font-semibold">{notice.personName}</span>
-          <Badge tone={tones[notice.state]}>{en.noticeStates[notice.state]}</Badge>
+          <Badge tone={tones[notice.state]}>{words.states[notice.state]}</Badge>
         </p>
-        <p className="text-sm text-ink-soft">
-          {en.channels[notice.channel]} to {notice.toAddress}
-        </p>
+        <p className="text-sm text-ink-soft">{words.wayTo(notice.channel, notice.toAddress)}</p>
         <p className="mt-1 text-sm">{notice.visitTitle}</p>
         <dl className="mt-1 grid grid-cols-[auto_1fr] gap-x-2 text-sm text-ink-soft">
-          <dt>Queued</dt>
+          <dt>{words.states.queued}</dt>
           <dd>{at(notice.queuedMs)}</dd>
           {notice.sentMs !== null && (
             <>
-              <dt>Sent</dt>
+              <dt>{words.states.sent}</dt>
               <dd>{at(notice.sentMs)}</dd>
             </>
           )}
           {notice.deliveredMs !== null && (
             <>
-              <dt>Delivered</dt>
+              <dt>{words.states.delivered}</dt>
               <dd>{at(notice.deliveredMs)}</dd>
             </>
           )}
           {notice.attempts > 1 && (
             <>
-              <dt>Tries</dt>
+              <dt>{words.tries}</dt>
               <dd>{notice.attempts}</dd>
             </>
           )}
@@ -130,16 +127,14 @@ function Notice({ notice, zone }: { notice: NoticeView; zone: string }) {
           </p>
         )}
         {notice.subject && <p className="font-medium">{notice.subject}</p>}
-        <p className="whitespace-pre-wrap break-words">
-          {notice.body.replaceAll('{link}', '[their own link]')}
-        </p>
+        <p className="whitespace-pre-wrap break-words">{notice.body.replaceAll('{link}', words.ownLink)}</p>
       </div>
     </li>
   );
 }
 
 function errorText(code: string | null): string {
-  if (code === 'superseded') return 'Not sent: a newer notice took its place.';
-  if (code === 'interrupted') return 'The provider was called and no answer came. It may have been sent.';
-  return `Not sent (${code}).`;
+  if (code === 'superseded') return words.superseded;
+  if (code === 'interrupted') return words.interrupted;
+  return words.notSent(code);
 }

@@ -1,4 +1,5 @@
 import { type ReactNode, useEffect, useId, useRef } from 'react';
+import { office } from '../../lib/words/office.en.ts';
 
 /**
  * A modal dialog on the browser's own element, which keeps the focus inside and gives it back. Escape and a press
@@ -51,7 +52,7 @@ export function Dialog({
               type="button"
               className="button button-quiet -mr-2 -mt-1"
               onClick={onClose}
-              aria-label="Close"
+              aria-label={office.close}
             >
               <svg
                 aria-hidden="true"

@@ -1,4 +1,5 @@
 import { type ReactNode, useId } from 'react';
+import { office } from '../../lib/words/office.en.ts';
 
 /** What the control inside a field carries, so that label, hint and error are read with it. */
 export interface ControlProps {
@@ -29,7 +30,7 @@ export function Field({
     <div className={`flex flex-col gap-1 ${className}`}>
       <label htmlFor={id} className="text-sm font-medium">
         {label}
-        {optional && <span className="font-normal text-ink-faint"> (may be left out)</span>}
+        {optional && <span className="font-normal text-ink-faint"> {office.mayBeLeftOut}</span>}
       </label>
       {children({
         id,

@@ -1,4 +1,5 @@
 import { useSyncExternalStore } from 'react';
+import { office } from '../../lib/words/office.en.ts';
 import { Button } from './Button.tsx';
 
 /** A short message at the foot of the screen, read out as it appears. */
@@ -77,7 +78,7 @@ export function Toasts() {
           <button
             type="button"
             className="button button-quiet px-2"
-            aria-label="Close"
+            aria-label={office.close}
             onClick={() => dismissToast(toast.id)}
           >
             <svg

@@ -10,7 +10,10 @@ import {
 } from '@strikeboard/db/queries/set-up-crews';
 import { z } from 'zod';
 import { en } from '../../words/en.ts';
+import { office } from '../../words/office.en.ts';
 import { type FormValues, formObject, orNull, problemsOf, requiredText, type SetUpKind } from './form.ts';
+
+const words = office.setUp.crews;
 
 const schema = z.object({
   name: requiredText(60),
@@ -19,11 +22,11 @@ const schema = z.object({
 });
 
 export const crewsKind: SetUpKind = {
-  title: 'Crews',
-  one: 'crew',
-  about: 'Each crew is a lane of the board. Who is on it from now on is on its next visits.',
-  headings: ['Crew', 'Foreman', 'People'],
-  endWord: 'Close the lane',
+  title: words.title,
+  one: words.one,
+  about: words.about,
+  headings: words.headings,
+  endWord: words.endWord,
   rows: async (tx, { nowMs }) => {
     const names = new Map((await listMembers(tx)).map(({ personId, name }) => [personId, name]));
     const crews = await listCrews(tx, { atMs: nowMs });
@@ -42,9 +45,16 @@ export const crewsKind: SetUpKind = {
       label: `${name} (${en.roles[role].toLowerCase()})`,
     }));
     return [
-      { name: 'name', label: 'Name', kind: 'text' },
-      { name: 'foremanId', label: 'Foreman', kind: 'select', options: members, optional: true, half: true },
-      { name: 'memberIds', label: 'On the crew from now on', kind: 'checks', options: members },
+      { name: 'name', ...words.fields.name, kind: 'text' },
+      {
+        name: 'foremanId',
+        ...words.fields.foremanId,
+        kind: 'select',
+        options: members,
+        optional: true,
+        half: true,
+      },
+      { name: 'memberIds', ...words.fields.memberIds, kind: 'checks', options: members },
     ];
   },
   values: async (tx, id, { nowMs }): Promise<FormValues> => {

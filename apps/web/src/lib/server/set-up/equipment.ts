@@ -7,6 +7,7 @@ import {
 } from '@strikeboard/db/queries/set-up-supply';
 import { equipmentKinds } from '@strikeboard/domain/vocabulary';
 import { z } from 'zod';
+import { office } from '../../words/office.en.ts';
 import {
   decimal,
   email,
@@ -22,14 +23,7 @@ import {
 } from './form.ts';
 import { shortDecimal } from './plants.ts';
 
-const kindNames = {
-  pump: 'Pump',
-  'laser-screed': 'Laser screed',
-  'ride-on-trowel': 'Ride-on trowel',
-  saw: 'Saw',
-  blankets: 'Blankets',
-  other: 'Other',
-} as const;
+const words = office.setUp.equipment;
 
 const schema = z.object({
   kind: z.enum(equipmentKinds, 'a kind'),
@@ -48,36 +42,36 @@ const schema = z.object({
 });
 
 const fields: FormField[] = [
-  { name: 'name', label: 'Name', kind: 'text' },
+  { name: 'name', ...words.fields.name, kind: 'text' },
   {
     name: 'kind',
-    label: 'Kind',
+    ...words.fields.kind,
     kind: 'select',
-    options: equipmentKinds.map((value) => ({ value, label: kindNames[value] })),
+    options: equipmentKinds.map((value) => ({ value, label: words.kinds[value] })),
     half: true,
   },
-  { name: 'boom', label: 'It is a boom pump', kind: 'checkbox', hint: 'Unticked, a pump is a line pump.' },
-  { name: 'reachFt', label: 'Reach, ft', kind: 'decimal', optional: true },
-  { name: 'outputYd3PerHour', label: 'Output, yd³/h', kind: 'decimal', optional: true, half: true },
-  { name: 'travelMin', label: 'Travel, minutes', kind: 'whole' },
-  { name: 'setUpMin', label: 'Set-up, minutes', kind: 'whole', half: true },
-  { name: 'washOutMin', label: 'Wash-out, minutes', kind: 'whole' },
-  { name: 'operatorPhoneE164', label: 'Operator, phone', kind: 'text', optional: true },
-  { name: 'operatorEmail', label: 'Operator, e-mail', kind: 'text', optional: true, half: true },
+  { name: 'boom', ...words.fields.boom, kind: 'checkbox' },
+  { name: 'reachFt', ...words.fields.reachFt, kind: 'decimal', optional: true },
+  { name: 'outputYd3PerHour', ...words.fields.outputYd3PerHour, kind: 'decimal', optional: true, half: true },
+  { name: 'travelMin', ...words.fields.travelMin, kind: 'whole' },
+  { name: 'setUpMin', ...words.fields.setUpMin, kind: 'whole', half: true },
+  { name: 'washOutMin', ...words.fields.washOutMin, kind: 'whole' },
+  { name: 'operatorPhoneE164', ...words.fields.operatorPhoneE164, kind: 'text', optional: true },
+  { name: 'operatorEmail', ...words.fields.operatorEmail, kind: 'text', optional: true, half: true },
 ];
 
 export const equipmentKind: SetUpKind = {
-  title: 'Pumps and equipment',
-  one: 'piece',
-  about: 'What you own or hire few of. A piece is on one visit at a time, travel and wash-out included.',
-  headings: ['Name', 'Kind', 'Reach', 'Output', 'Travel, set-up, wash-out', 'Operator'],
-  endWord: 'Use no more',
+  title: words.title,
+  one: words.one,
+  about: words.about,
+  headings: words.headings,
+  endWord: words.endWord,
   rows: async (tx) =>
     (await listEquipment(tx)).map((piece) => ({
       id: piece.id,
       cells: [
         piece.name,
-        piece.kind === 'pump' ? (piece.boom ? 'Boom pump' : 'Line pump') : kindNames[piece.kind],
+        piece.kind === 'pump' ? (piece.boom ? words.boomPump : words.linePump) : words.kinds[piece.kind],
         piece.reachFt === null ? '' : `${shortDecimal(piece.reachFt)} ft`,
         piece.outputYd3PerHour === null ? '' : `${shortDecimal(piece.outputYd3PerHour)} yd³/h`,
         `${piece.travelMin} + ${piece.setUpMin} + ${piece.washOutMin} min`,

@@ -2,6 +2,7 @@ import { NotFound } from '@strikeboard/db/errors';
 import { createMix, editMix, endSupply, listMixes, listPlants } from '@strikeboard/db/queries/set-up-supply';
 import { cements } from '@strikeboard/domain/vocabulary';
 import { z } from 'zod';
+import { office } from '../../words/office.en.ts';
 import {
   decimal,
   type FormValues,
@@ -14,6 +15,8 @@ import {
 } from './form.ts';
 import { shortDecimal } from './plants.ts';
 
+const words = office.setUp.mixes;
+
 const schema = z.object({
   plantId: z.uuid('a plant'),
   code: requiredText(60),
@@ -24,18 +27,12 @@ const schema = z.object({
   dischargeLimitMin: orNull(whole(15, 600)),
 });
 
-const cementNames = {
-  'type-i': 'Type I',
-  'type-ii': 'Type II',
-  'type-iii': 'Type III (high early)',
-} as const;
-
 export const mixesKind: SetUpKind = {
-  title: 'Mixes',
-  one: 'mix',
-  about: 'What each plant carries, by the code you order it with.',
-  headings: ['Code', 'Name', 'Plant', 'Strength', 'Slump', 'Discharge within'],
-  endWord: 'Carried no more',
+  title: words.title,
+  one: words.one,
+  about: words.about,
+  headings: words.headings,
+  endWord: words.endWord,
   rows: async (tx) => {
     const plants = new Map((await listPlants(tx, { ended: true })).map(({ id, name }) => [id, name]));
     return (await listMixes(tx)).map((mix) => ({
@@ -51,30 +48,28 @@ export const mixesKind: SetUpKind = {
     }));
   },
   fields: async (tx) => [
-    { name: 'code', label: 'Code', kind: 'text', hint: 'As the plant calls it.' },
-    { name: 'name', label: 'Name', kind: 'text', half: true },
+    { name: 'code', ...words.fields.code, kind: 'text' },
+    { name: 'name', ...words.fields.name, kind: 'text', half: true },
     {
       name: 'plantId',
-      label: 'Plant',
+      ...words.fields.plantId,
       kind: 'select',
       options: (await listPlants(tx)).map(({ id, name }) => ({ value: id, label: name })),
-      hint: 'A mix stays with its plant.',
     },
     {
       name: 'cement',
-      label: 'Cement',
+      ...words.fields.cement,
       kind: 'select',
-      options: cements.map((value) => ({ value, label: cementNames[value] })),
+      options: cements.map((value) => ({ value, label: words.cements[value] })),
       half: true,
     },
-    { name: 'strengthPsi', label: 'Strength, psi', kind: 'whole' },
-    { name: 'slumpIn', label: 'Slump, in', kind: 'decimal', optional: true, half: true },
+    { name: 'strengthPsi', ...words.fields.strengthPsi, kind: 'whole' },
+    { name: 'slumpIn', ...words.fields.slumpIn, kind: 'decimal', optional: true, half: true },
     {
       name: 'dischargeLimitMin',
-      label: 'Discharge within, minutes',
+      ...words.fields.dischargeLimitMin,
       kind: 'whole',
       optional: true,
-      hint: "Blank: the company's rule.",
     },
   ],
   values: async (tx, id): Promise<FormValues> => {

@@ -6,6 +6,7 @@ import { finishes, languages, type Role, roles } from '@strikeboard/domain/vocab
 import { z } from 'zod';
 import { ProblemError } from '../../api/problems.ts';
 import { en } from '../../words/en.ts';
+import { office } from '../../words/office.en.ts';
 import {
   email,
   type FormField,
@@ -17,6 +18,8 @@ import {
   requiredText,
   type SetUpKind,
 } from './form.ts';
+
+const words = office.setUp.people;
 
 const schema = z
   .object({
@@ -33,41 +36,36 @@ const schema = z
   });
 
 const fields: FormField[] = [
-  { name: 'name', label: 'Name', kind: 'text' },
+  { name: 'name', ...words.fields.name, kind: 'text' },
   {
     name: 'role',
-    label: 'Role',
+    ...words.fields.role,
     kind: 'select',
     options: roles.map((value) => ({ value, label: en.roles[value] })),
     half: true,
   },
-  { name: 'phoneE164', label: 'Phone', kind: 'text', optional: true, hint: 'Texts go here.' },
-  { name: 'email', label: 'E-mail', kind: 'text', optional: true, half: true },
+  { name: 'phoneE164', ...words.fields.phoneE164, kind: 'text', optional: true },
+  { name: 'email', ...words.fields.email, kind: 'text', optional: true, half: true },
   {
     name: 'language',
-    label: 'Reads',
+    ...words.fields.language,
     kind: 'select',
-    options: [
-      { value: 'en', label: 'English' },
-      { value: 'es', label: 'Spanish' },
-    ],
+    options: languages.map((value) => ({ value, label: words.languages[value] })),
   },
   {
     name: 'skills',
-    label: 'Finishes they can do',
+    ...words.fields.skills,
     kind: 'checks',
-    hint: 'None ticked means any.',
     options: finishes.map((value) => ({ value, label: en.finishes[value] })),
   },
 ];
 
 export const peopleKind: SetUpKind = {
-  title: 'People',
-  one: 'person',
-  about:
-    'Everyone who works for you, and the office. A sub who works for others too is one person everywhere.',
-  headings: ['Name', 'Role', 'Crew', 'Phone', 'E-mail', 'Reads'],
-  endWord: 'Has left',
+  title: words.title,
+  one: words.one,
+  about: words.about,
+  headings: words.headings,
+  endWord: words.endWord,
   rows: async (tx, { nowMs }) => {
     const crews = await listCrews(tx, { atMs: nowMs });
     const members = await listMembers(tx);
@@ -82,7 +80,7 @@ export const peopleKind: SetUpKind = {
           .join(', '),
         member.phoneE164 ?? '',
         member.email ?? '',
-        member.language === 'es' ? 'Spanish' : 'English',
+        words.languages[member.language],
       ],
     }));
   },
@@ -99,20 +97,19 @@ export const peopleKind: SetUpKind = {
     if (!parsed.success) return problemsOf(parsed.error);
     const before = id === null ? null : await roleOf(tx, id);
     const isOfficeRole = officeRoles.has(parsed.data.role) || (before !== null && officeRoles.has(before));
-    if (role !== 'owner' && isOfficeRole && parsed.data.role !== before) return { role: ownersOnly };
+    if (role !== 'owner' && isOfficeRole && parsed.data.role !== before) return { role: words.ownersOnly };
     if (id === null) await addMember(tx, parsed.data);
     else await editMember(tx, { personId: id, fields: parsed.data });
     return {};
   },
   end: async (tx, id, { nowMs, role }) => {
     if (role !== 'owner' && officeRoles.has(await roleOf(tx, id)))
-      throw new ProblemError('not-allowed', ownersOnly);
+      throw new ProblemError('not-allowed', words.ownersOnly);
     await endMember(tx, { personId: id, nowMs });
   },
 };
 
 const officeRoles: ReadonlySet<Role> = new Set<Role>(['owner', 'dispatcher']);
-const ownersOnly = 'Only an owner says who is owner and who is dispatcher.';
 
 /** @throws NotFound when they do not belong to the company */
 async function roleOf(tx: Tx, personId: string): Promise<Role> {

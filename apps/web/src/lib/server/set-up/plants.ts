@@ -8,6 +8,7 @@ import {
 } from '@strikeboard/db/queries/set-up-supply';
 import { isSiteDay, isZone } from '@strikeboard/domain/zone';
 import { z } from 'zod';
+import { office } from '../../words/office.en.ts';
 import {
   clockMin,
   clockText,
@@ -23,7 +24,8 @@ import {
   type SetUpKind,
 } from './form.ts';
 
-export const weekDays = ['Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun'] as const;
+const words = office.setUp.plants;
+const { weekDays } = office.setUp;
 
 const schema = z
   .object({
@@ -48,31 +50,30 @@ const schema = z
   });
 
 const fields: FormField[] = [
-  { name: 'name', label: 'Name', kind: 'text' },
-  { name: 'zone', label: 'Time zone', kind: 'zone', half: true },
-  { name: 'hours', label: 'First and last load', kind: 'week-hours', hint: 'A day without times is closed.' },
+  { name: 'name', ...words.fields.name, kind: 'text' },
+  { name: 'zone', ...words.fields.zone, kind: 'zone', half: true },
+  { name: 'hours', ...words.fields.hours, kind: 'week-hours' },
   {
     name: 'closedDays',
-    label: 'Closed on',
+    ...words.fields.closedDays,
     kind: 'lines',
     optional: true,
-    hint: 'Holidays as YYYY-MM-DD, one per line.',
   },
-  { name: 'maxYd3PerHour', label: 'Most yd³ per hour', kind: 'decimal', optional: true },
-  { name: 'shortLoadYd3', label: 'Short load under, yd³', kind: 'decimal', optional: true, half: true },
-  { name: 'orderStepYd3', label: 'Orders in steps of, yd³', kind: 'decimal' },
-  { name: 'latDeg', label: 'Latitude', kind: 'decimal', optional: true, hint: 'With it the haul is known.' },
-  { name: 'lonDeg', label: 'Longitude', kind: 'decimal', optional: true, half: true },
-  { name: 'orderPhoneE164', label: 'Order desk, phone', kind: 'text', optional: true },
-  { name: 'orderEmail', label: 'Order desk, e-mail', kind: 'text', optional: true, half: true },
+  { name: 'maxYd3PerHour', ...words.fields.maxYd3PerHour, kind: 'decimal', optional: true },
+  { name: 'shortLoadYd3', ...words.fields.shortLoadYd3, kind: 'decimal', optional: true, half: true },
+  { name: 'orderStepYd3', ...words.fields.orderStepYd3, kind: 'decimal' },
+  { name: 'latDeg', ...words.fields.latDeg, kind: 'decimal', optional: true },
+  { name: 'lonDeg', ...words.fields.lonDeg, kind: 'decimal', optional: true, half: true },
+  { name: 'orderPhoneE164', ...words.fields.orderPhoneE164, kind: 'text', optional: true },
+  { name: 'orderEmail', ...words.fields.orderEmail, kind: 'text', optional: true, half: true },
 ];
 
 export const plantsKind: SetUpKind = {
-  title: 'Plants',
-  one: 'plant',
-  about: 'Ready-mix plants that you order from, with their hours and what they can make.',
-  headings: ['Plant', 'Hours', 'yd³/h', 'Short load', 'Order desk'],
-  endWord: 'Use no more',
+  title: words.title,
+  one: words.one,
+  about: words.about,
+  headings: words.headings,
+  endWord: words.endWord,
   rows: async (tx) =>
     (await listPlants(tx)).map((plant) => ({
       id: plant.id,
@@ -119,7 +120,7 @@ export const plantsKind: SetUpKind = {
     const hours = readHours(form);
     const problems = {
       ...(parsed.success ? {} : problemsOf(parsed.error)),
-      ...(hours === null ? { hours: 'Expected both times of a day, or neither.' } : {}),
+      ...(hours === null ? { hours: words.bothTimes } : {}),
     };
     if (!parsed.success || hours === null) return problems;
     const plant = { ...parsed.data, hours };

@@ -2,6 +2,7 @@ import { NotFound } from '@strikeboard/db/errors';
 import { createSite, editSite, endSite, listSites } from '@strikeboard/db/queries/set-up-sites';
 import { isZone } from '@strikeboard/domain/zone';
 import { z } from 'zod';
+import { office } from '../../words/office.en.ts';
 import {
   blankable,
   clockMin,
@@ -15,6 +16,8 @@ import {
   requiredText,
   type SetUpKind,
 } from './form.ts';
+
+const words = office.setUp.sites;
 
 const schema = z
   .object({
@@ -34,47 +37,43 @@ const schema = z
   });
 
 const fields: FormField[] = [
-  { name: 'name', label: 'Name', kind: 'text' },
-  { name: 'customerName', label: 'Customer', kind: 'text', optional: true, half: true },
+  { name: 'name', ...words.fields.name, kind: 'text' },
+  { name: 'customerName', ...words.fields.customerName, kind: 'text', optional: true, half: true },
   {
     name: 'address',
-    label: 'Address',
+    ...words.fields.address,
     kind: 'text',
-    hint: 'Street, town, state, zip: as crews will look for it.',
   },
-  { name: 'zone', label: 'Time zone', kind: 'zone' },
+  { name: 'zone', ...words.fields.zone, kind: 'zone' },
   {
     name: 'latDeg',
-    label: 'Latitude',
+    ...words.fields.latDeg,
     kind: 'decimal',
     optional: true,
-    hint: 'With it the drive and the daylight are known.',
   },
-  { name: 'lonDeg', label: 'Longitude', kind: 'decimal', optional: true, half: true },
-  { name: 'permittedFromMin', label: 'Concrete permitted from', kind: 'clock', optional: true },
+  { name: 'lonDeg', ...words.fields.lonDeg, kind: 'decimal', optional: true, half: true },
+  { name: 'permittedFromMin', ...words.fields.permittedFromMin, kind: 'clock', optional: true },
   {
     name: 'permittedUntilMin',
-    label: 'until',
+    ...words.fields.permittedUntilMin,
     kind: 'clock',
     optional: true,
     half: true,
-    hint: 'Earlier than from: until the next day.',
   },
   {
     name: 'accessNotes',
-    label: 'Access',
+    ...words.fields.accessNotes,
     kind: 'lines',
     optional: true,
-    hint: 'Gates, dogs, where trucks enter. Crews read it.',
   },
 ];
 
 export const sitesKind: SetUpKind = {
-  title: 'Sites',
-  one: 'site',
-  about: 'Where concrete goes.',
-  headings: ['Site', 'Address', 'Customer', 'Permitted', 'Time zone'],
-  endWord: 'Close the site',
+  title: words.title,
+  one: words.one,
+  about: words.about,
+  headings: words.headings,
+  endWord: words.endWord,
   rows: async (tx) =>
     (await listSites(tx)).map((site) => ({
       id: site.id,
