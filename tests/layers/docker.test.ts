@@ -25,18 +25,19 @@ const { services } = compose;
 
 /** What `npm start` gives to web server and worker, without what only its fakes or this machine need. */
 function usualNames(): string[] {
-  const secret = { authSecret: 's', smsAccountSid: 'AC0', smsAuthToken: 't' };
   const names = Object.keys(
     serviceEnvironment({
       env: {},
       settings: { port: 4321, hasOwnSms: false },
       secrets: {
-        ...secret,
-        superPassword: '',
+        superuserPassword: '',
         ownerPassword: '',
         webPassword: '',
         workerPassword: '',
-      } as Parameters<typeof serviceEnvironment>[0]['secrets'],
+        authSecret: 's',
+        smsAccountSid: 'AC0',
+        smsAuthToken: 't',
+      },
       port: 4321,
       settleSeconds: undefined,
       inboxUrl: 'http://127.0.0.1:1',
