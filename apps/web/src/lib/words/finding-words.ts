@@ -2,7 +2,8 @@
 
 import type { Clearing, Finding, FindingCode } from '@strikeboard/domain/finding';
 import type { Language } from '@strikeboard/domain/vocabulary';
-import { formatClock, formatDay, siteDayOf } from '@strikeboard/domain/zone';
+import { formatClock, siteDayOf } from '@strikeboard/domain/zone';
+import { dayText } from './day-text.ts';
 
 /** Name of a row that a finding speaks of. */
 export type NameOf = (kind: Finding['against'][number]['kind'], id: string) => string;
@@ -51,7 +52,7 @@ export interface Printer {
 
 export function printerOf(zone: string, language: Language): Printer {
   return {
-    moment: (ms) => `${formatDay(siteDayOf(ms, zone), language)}, ${formatClock(ms, zone, language)}`,
+    moment: (ms) => `${dayText(siteDayOf(ms, zone), language)}, ${formatClock(ms, zone, language)}`,
     number: (value, digits = 1) =>
       value.toLocaleString(language === 'es' ? 'es-US' : 'en-US', { maximumFractionDigits: digits }),
   };
@@ -87,7 +88,7 @@ export function wordFinding(
     },
     first: (kind) => named(kind)[0] ?? null,
     all: (kind) => listOf(named(kind), catalogue.and),
-    day: () => (finding.during ? formatDay(siteDayOf(finding.during.startMs, zone), language) : null),
+    day: () => (finding.during ? dayText(siteDayOf(finding.during.startMs, zone), language) : null),
   };
   return {
     ...catalogue.codes[finding.code](facts),
