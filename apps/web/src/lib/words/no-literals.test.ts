@@ -32,7 +32,12 @@ function literalsIn(file: string, code: string): string[] {
   return found;
 }
 
-type Text = ts.StringLiteral | ts.NoSubstitutionTemplateLiteral | ts.TemplateHead | ts.TemplateMiddleOrTail;
+type Text =
+  | ts.StringLiteral
+  | ts.NoSubstitutionTemplateLiteral
+  | ts.TemplateHead
+  | ts.TemplateMiddle
+  | ts.TemplateTail;
 
 /** The literals that an expression can come to. Arguments of calls and sides of comparisons are no text on a page. */
 function textsOf(node: ts.Node | undefined): Text[] {
