@@ -18,7 +18,8 @@ export function Problems({ shown }: { shown: Import }) {
       </h3>
       {problems.length === 0 && <p className="px-4 py-3 text-ink-soft">{words.nothingWrong}</p>}
       {problems.length > 0 && (
-        <div className="max-h-[28rem] overflow-auto">
+        // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls has to be within reach of the keyboard.
+        <div className="max-h-[28rem] overflow-auto" tabIndex={0}>
           <table className="table min-w-[44rem]">
             <thead className="sticky top-0 bg-sheet">
               <tr>

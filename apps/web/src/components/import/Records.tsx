@@ -17,7 +17,8 @@ export function Records({ shown }: { shown: Import }) {
           </span>
         )}
       </h3>
-      <div className="overflow-x-auto">
+      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls has to be within reach of the keyboard. */}
+      <div className="overflow-x-auto" tabIndex={0}>
         <table className="table text-sm">
           <thead>
             <tr>
