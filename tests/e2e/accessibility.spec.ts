@@ -80,7 +80,7 @@ test('the board, its panel and its dialogs', async ({ openAs, apiAs }) => {
     await expect(page.getByRole('tabpanel', { name: tab })).toBeVisible();
   };
   for (const tab of ['Plan', 'Edit', 'People', 'History'])
-    await lookOver(page, `panel, ${tab}`, () => openPanel(tab), 'aside');
+    await lookOver(page, `panel, ${tab}`, () => openPanel(tab), { within: 'aside' });
   await lookOver(
     page,
     'a new pour',
@@ -89,7 +89,7 @@ test('the board, its panel and its dialogs', async ({ openAs, apiAs }) => {
       await page.getByRole('button', { name: 'New pour' }).click();
       await expect(page.getByRole('dialog')).toBeVisible();
     },
-    'dialog',
+    { within: 'dialog' },
   );
   await page.setViewportSize(phone);
   await lookOver(page, 'board on a phone', () => board.open(cedarFlat.slug, day, 1));
@@ -104,14 +104,15 @@ test('import, notices and yard sheet', async ({ openAs }) => {
     await expect(page.getByRole('radio', { name: /Waiting pours/ })).toBeVisible();
   });
   const sheet = 'Job name;Yds;Finish\nLarkbunting residence;a few;Broom\nTamarisk lot 16;7;Broom\n';
-  await lookOver(page, 'import, looked at', async () => {
+  const lookAtImport = async () => {
     await page.goto('/cedar-flat/import');
     await page.getByRole('radio', { name: /Waiting pours/ }).check();
     await page
       .getByLabel('Choose a CSV or XLSX file')
       .setInputFiles({ name: 'few.csv', mimeType: 'text/csv', buffer: Buffer.from(sheet) });
     await expect(page.getByRole('region', { name: 'To look at' })).toBeVisible();
-  });
+  };
+  await lookOver(page, 'import, looked at', lookAtImport);
   await lookOver(page, 'notices', async () => {
     await page.goto('/cedar-flat/notices');
     await expect(page.getByRole('listitem').filter({ hasText: 'Text to' }).first()).toBeVisible();
@@ -121,6 +122,7 @@ test('import, notices and yard sheet', async ({ openAs }) => {
     await expect(page.locator('.recharts-wrapper').getByText('This week')).toBeVisible();
   });
   await page.setViewportSize(phone);
+  await lookOver(page, 'import on a phone, looked at', lookAtImport);
   for (const path of ['import', 'notices', 'yard-sheet'])
     await lookOver(page, `${path} on a phone`, async () => {
       await page.goto(`/cedar-flat/${path}`);
@@ -132,15 +134,19 @@ test('import, notices and yard sheet', async ({ openAs }) => {
 test('set-up', async ({ openAs }) => {
   test.setTimeout(300_000);
   const page = await openAs(accounts.owner, { viewport: wide });
+  // One page draws all kinds: its looks are held in every theme for one of them, its fields for all.
   for (const kind of ['people', 'crews', 'sites', 'plants', 'mixes', 'equipment']) {
-    await lookOver(page, kind, async () => {
+    const by = kind === 'people' ? themes : (['light'] as const);
+    const list = async () => {
       await page.goto(`/cedar-flat/set-up/${kind}`);
       await heading(page, /\S/);
-    });
-    await lookOver(page, `${kind}, one more`, async () => {
+    };
+    const form = async () => {
       await page.goto(`/cedar-flat/set-up/${kind}?add`);
       await expect(page.getByRole('button', { name: 'Save' })).toBeVisible();
-    });
+    };
+    await lookOver(page, kind, list, { by });
+    await lookOver(page, `${kind}, one more`, form, { by });
   }
   await page.setViewportSize(phone);
   await lookOver(page, 'people on a phone', async () => {
