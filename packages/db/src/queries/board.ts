@@ -153,10 +153,7 @@ export async function readSnapshot(
   const busyRows = await tx
     .select({ personId: sql<string>`person_id`, during: sql<Interval>`during`.mapWith(parseRange) })
     .from(sql`app.busy_times(${at(range.startMs - DAY_MS)}, ${until})`);
-  const toldState = await readToldState(
-    tx,
-    visitRows.map(({ id }) => id),
-  );
+  const toldState = await readToldState(tx, [...new Set(shiftRows.map(({ visitId }) => visitId))]);
 
   const slabsByPour = new Map<string, ReturnType<typeof toSlab>[]>();
   for (const { pourId, slab } of slabRows)

@@ -5,7 +5,7 @@ import { currentCompany } from '../tables/columns.ts';
 import { outbox, type shifts, told, type visits } from '../tables/index.ts';
 import { toVisit } from './snapshot-rows.ts';
 
-/** What has been told of some visits, and what is still to be told. */
+/** What has been told of some visits, and what is still to be told of any. */
 export interface ToldState {
   /** Visits with a change that nobody has been told of yet. */
   readonly untold: ReadonlySet<string>;
@@ -13,18 +13,14 @@ export interface ToldState {
   isTold(shift: Pick<typeof shifts.$inferSelect, 'visitId' | 'personId' | 'during'>): boolean;
 }
 
+/** Reads what is left to tell in the company, and what the people of the given visits were told. */
 export async function readToldState(tx: Tx, visitIds: readonly string[]): Promise<ToldState> {
-  if (visitIds.length === 0) return { untold: new Set(), isTold: () => false };
   const pending = await tx
     .selectDistinct({ visitId: outbox.visitId })
     .from(outbox)
-    .where(
-      and(
-        eq(outbox.companyId, currentCompany),
-        isNull(outbox.doneAt),
-        inArray(outbox.visitId, [...visitIds]),
-      ),
-    );
+    .where(and(eq(outbox.companyId, currentCompany), isNull(outbox.doneAt)));
+  const untold = new Set(pending.map(({ visitId }) => visitId));
+  if (visitIds.length === 0) return { untold, isTold: () => false };
   const rows = await tx
     .select({
       visitId: told.visitId,
@@ -38,7 +34,7 @@ export async function readToldState(tx: Tx, visitIds: readonly string[]): Promis
     rows.map((row) => [`${row.visitId} ${row.personId}`, row.calledOff ? null : Number(row.crewStartMs)]),
   );
   return {
-    untold: new Set(pending.map(({ visitId }) => visitId)),
+    untold,
     isTold: ({ visitId, personId, during }) => starts.get(`${visitId} ${personId}`) === during.startMs,
   };
 }

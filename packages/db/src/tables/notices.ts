@@ -33,6 +33,8 @@ export const outbox = pgTable(
   (t) => [
     primaryKey({ columns: [t.companyId, t.id] }),
     index('outbox_visit').on(t.companyId, t.visitId),
+    // What is left to tell is little, of a table that only grows.
+    index('outbox_left').on(t.companyId, t.visitId).where(sql`done_at is null`),
     foreignKey({
       columns: [t.companyId, t.visitId],
       foreignColumns: [visits.companyId, visits.id],

@@ -1,0 +1,1 @@
+CREATE INDEX "outbox_left" ON "outbox" USING btree ("company_id","visit_id") WHERE done_at is null;
