@@ -24,8 +24,13 @@ async function violationsOf(page: Page, within?: string): Promise<string[]> {
 }
 
 /** Looks a page over in each theme, as the cookie of the theme switch sets it. */
-async function lookOver(page: Page, name: string, open: () => Promise<void>, within?: string): Promise<void> {
-  for (const theme of themes) {
+async function lookOver(
+  page: Page,
+  name: string,
+  open: () => Promise<void>,
+  { within, by = themes }: { within?: string; by?: readonly (typeof themes)[number][] } = {},
+): Promise<void> {
+  for (const theme of by) {
     await test.step(`${name}, ${theme}`, async () => {
       await page.context().addCookies([{ name: 'theme', value: theme, url: fromStack('E2E_WEB_URL') }]);
       await open();
