@@ -1,5 +1,5 @@
 import { defineConfig } from 'vitest/config';
 
 export default defineConfig({
-  test: { name: 'web', include: ['src/**/*.test.{ts,tsx}'] },
+  test: { name: 'web', testTimeout: 30_000, include: ['src/**/*.test.{ts,tsx}'] },
 });
