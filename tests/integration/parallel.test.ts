@@ -5,7 +5,7 @@ import { DatabaseFailure, Refused } from '@strikeboard/db/errors';
 import { newId } from '@strikeboard/db/ids';
 import { placeVisit } from '@strikeboard/db/queries/placement';
 import { createPour } from '@strikeboard/db/queries/pours';
-import { createCrew, joinCrew } from '@strikeboard/db/queries/set-up-crews';
+import { createCrew, editCrew, joinCrew } from '@strikeboard/db/queries/set-up-crews';
 import { createEquipment } from '@strikeboard/db/queries/set-up-supply';
 import type { FindingCode } from '@strikeboard/domain/finding';
 import type { PlacingMethod } from '@strikeboard/domain/vocabulary';
@@ -73,13 +73,18 @@ async function waitingPour(company: TestCompany, name: string, placingMethod: Pl
   return visit;
 }
 
-const drop = (company: TestCompany, visit: { id: string; version: number }, crewId: string) =>
+const drop = (
+  company: TestCompany,
+  visit: { id: string; version: number },
+  crewId: string,
+  crewStartMs = START_MS,
+) =>
   inCompany(many, { companyId: company.companyId, personId: company.ownerId }, (tx) =>
     placeVisit(tx, {
       actorId: company.ownerId,
       nowMs: NOW_MS,
       settleSeconds: 120,
-      placement: { visitId: visit.id, crewId, crewStartMs: START_MS },
+      placement: { visitId: visit.id, crewId, crewStartMs },
       baseVersion: visit.version,
       reasons,
     }),
@@ -204,6 +209,118 @@ describe(`${TIMES} drops that want the same pump`, () => {
       await countOf("select count(*) from equipment_bookings where state = 'drafted'", [], company.companyId),
     ).toBe(1);
   }, 180_000);
+
+  for (const isolation of ['read committed', 'serializable'] as const) {
+    it(`holds in the database alone at ${isolation}, with nothing above it`, async () => {
+      const company = await makeCompany(db, {
+        slug: `bare-pump-${isolation.replace(' ', '-')}`,
+        name: 'Bare',
+      });
+      const pumpId = await inCompany(many, { companyId: company.companyId, personId: null }, (tx) =>
+        createEquipment(tx, {
+          ...{ kind: 'pump', name: 'Boom', boom: true, reachFt: '105', outputYd3PerHour: '90' },
+          ...{ setUpMin: 30, washOutMin: 30, travelMin: 30, operatorEmail: null, operatorPhoneE164: null },
+        }),
+      );
+      const during = { startMs: START_MS, endMs: START_MS + 3_600_000 };
+      const placed = [];
+      for (let turn = 0; turn < TIMES; turn += 1) placed.push(await placePour(many, company, { during }));
+      const { won, lost } = outcomes(
+        await Promise.allSettled(
+          placed.map(async ({ visitId }, turn) => {
+            const client = new pg.Client(urls.web);
+            await client.connect();
+            try {
+              await client.query(`begin isolation level ${isolation}`);
+              await client.query("select set_config('app.company_id', $1, true)", [company.companyId]);
+              await client.query(
+                `insert into equipment_bookings (company_id, id, visit_id, equipment_id, during, held)
+                 select $1, $2, $3, $4, r, r from tstzrange($5, $6) r`,
+                [
+                  ...[company.companyId, newId(), visitId, pumpId],
+                  new Date(START_MS + turn * 60_000),
+                  new Date(START_MS + turn * 60_000 + 3_600_000),
+                ],
+              );
+              await client.query('commit');
+            } finally {
+              await client.end();
+            }
+          }),
+        ),
+      );
+      expect(won).toBe(1);
+      for (const error of lost) expect(['23P01', '40001', '40P01']).toContain(error.code);
+      expect(await countOf('select count(*) from equipment_bookings', [], company.companyId)).toBe(1);
+    }, 120_000);
+  }
+});
+
+describe('two companies that want the same two people', () => {
+  it('never both have them, twenty times over', async () => {
+    const cedar = await makeCompany(db, { slug: 'shared-cedar', name: 'Cedar' });
+    const prairie = await makeCompany(db, { slug: 'shared-prairie', name: 'Prairie' });
+    // In the other order on the other crew, so that each would wait for the other's.
+    for (const [company, names] of [
+      [cedar, ['ana', 'ben']],
+      [prairie, ['ben', 'ana']],
+    ] as const)
+      for (const name of names) {
+        const personId = await addPerson(many, company, { name, email: `${name}@shared.example.com` });
+        await inCompany(many, { companyId: company.companyId, personId: null }, (tx) =>
+          joinCrew(tx, { crewId: company.crewId, personId, fromMs: NOW_MS - 1 }),
+        );
+      }
+    for (let turn = 0; turn < 20; turn += 1) {
+      const visits = [
+        [cedar, await waitingPour(cedar, `Cedar ${turn}`)],
+        [prairie, await waitingPour(prairie, `Prairie ${turn}`)],
+      ] as const;
+      const { won, lost } = outcomes(
+        await Promise.allSettled(
+          visits.map(([company, visit]) =>
+            drop(company, visit, company.crewId, START_MS + turn * 24 * 3_600_000),
+          ),
+        ),
+      );
+      expect(won).toBe(1);
+      for (const error of lost) {
+        expect(error).toBeInstanceOf(Refused);
+        expect(error.findings.map(({ code }: { code: FindingCode }) => code)).toContain('person-overlap');
+      }
+    }
+    const held = "select count(*) from shifts where state = 'held'";
+    expect((await countOf(held, [], cedar.companyId)) + (await countOf(held, [], prairie.companyId))).toBe(
+      40,
+    );
+  }, 120_000);
+});
+
+it('runs the one of two transactions that a deadlock has ended anew', async () => {
+  const company = await makeCompany(db, { slug: 'deadlock', name: 'Deadlock' });
+  const of = { companyId: company.companyId, personId: company.ownerId };
+  const other = await inCompany(many, of, (tx) => createCrew(tx, { name: 'Crew 2', foremanId: null }));
+  let attempts = 0;
+  let arrived = 0;
+  let open = () => {};
+  const both = new Promise<void>((resolve) => {
+    open = resolve;
+  });
+  const rename = (crewIds: readonly string[], sortOrder: number) =>
+    inCompany(many, of, async (tx) => {
+      attempts += 1;
+      for (const [at, crewId] of crewIds.entries()) {
+        await editCrew(tx, { crewId, fields: { sortOrder } });
+        if (at > 0) continue;
+        arrived += 1;
+        if (arrived === 2) open();
+        await both;
+      }
+    });
+  await Promise.all([rename([company.crewId, other], 7), rename([other, company.crewId], 8)]);
+  expect(attempts).toBe(3);
+  const orders = 'select count(*) from crews where sort_order in (7, 8) group by sort_order';
+  expect(await countOf(orders, [], company.companyId)).toBe(2);
 });
 
 it('says no statement and no value of a failed write', async () => {
