@@ -4,7 +4,7 @@ import { addDays, instantAt } from '@strikeboard/domain/zone';
 import { BoardApi, todayAt } from './board-api.ts';
 import { BoardPage } from './board-page.ts';
 import { accounts, companies, expect, fromStack, test } from './fixtures.ts';
-import { phoneList, textsTo } from './inbox.ts';
+import { textsTo } from './inbox.ts';
 
 // Rules are those of axe-core 4.13, which name the success criteria of WCAG 2.2 behind each.
 const { cedarFlat } = companies;
@@ -187,11 +187,10 @@ test('the own work, and pages that say no', async ({ openAs, allowOnConsole }) =
 test('the link page, down to the smallest phone', async ({ openAs, allowOnConsole }) => {
   allowOnConsole(/status of 404/);
   // The demo's board is firm in the week that is worked, so its people have been told.
-  const [{ phone: number }] = Object.values(phoneList).slice(1);
   const links = (await textsTo(null))
     .map(({ body }) => /\/l\/[A-Za-z0-9_-]{43}/.exec(body)?.[0])
     .filter((link) => link !== undefined);
-  expect(links.length, `texts such as those to ${number}`).toBeGreaterThan(0);
+  expect(links.length, 'texts with a link').toBeGreaterThan(0);
   const page = await openAs(null, { viewport: phone });
   const open = async () => {
     await page.goto(links.at(-1) ?? '');
