@@ -18,6 +18,8 @@ const conflictSentences: Readonly<Record<string, string>> = {
   'not-pencilled': 'Only a pencilled visit can be made firm.',
   'undone-already': 'This change was undone before.',
   'time-taken': 'It cannot go back: the time there has been taken since.',
+  'yards-placed': 'More yards than that are placed already.',
+  'pour-taken': 'The site has a pour of that name for that day already.',
   'key-reused': 'The same Idempotency-Key came with another request.',
   'not-undoable': 'This change cannot be undone.',
 };

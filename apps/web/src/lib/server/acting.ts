@@ -1,4 +1,4 @@
-import type { Acting } from '@strikeboard/db/queries/placement';
+import type { Acting } from '@strikeboard/db/queries/visit-changes';
 import type { SignedIn } from '../locals.ts';
 import { noticesConfig } from './notices.ts';
 

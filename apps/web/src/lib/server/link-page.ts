@@ -1,7 +1,7 @@
 import { type Database, inCompany, type Tx } from '@strikeboard/db/client';
 import { answerVisit } from '@strikeboard/db/queries/answers';
 import { type OpenedLink, openLink } from '@strikeboard/db/queries/links';
-import { indexAround } from '@strikeboard/db/queries/placement';
+import { indexAround } from '@strikeboard/db/queries/visit-changes';
 import { visitDetail } from '@strikeboard/db/queries/pours';
 import { listMembers } from '@strikeboard/db/queries/set-up';
 import { readVisitFacts } from '@strikeboard/db/queries/visit-facts';
