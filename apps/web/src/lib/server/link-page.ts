@@ -1,9 +1,9 @@
 import { type Database, inCompany, type Tx } from '@strikeboard/db/client';
 import { answerVisit } from '@strikeboard/db/queries/answers';
 import { type OpenedLink, openLink } from '@strikeboard/db/queries/links';
-import { indexAround } from '@strikeboard/db/queries/visit-changes';
 import { visitDetail } from '@strikeboard/db/queries/pours';
 import { listMembers } from '@strikeboard/db/queries/set-up';
+import { indexAround } from '@strikeboard/db/queries/visit-changes';
 import { readVisitFacts } from '@strikeboard/db/queries/visit-facts';
 import { type BoardIndex, isPlaced } from '@strikeboard/domain/board-index';
 import { findingsOf } from '@strikeboard/domain/checks/run';
