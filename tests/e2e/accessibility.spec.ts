@@ -3,7 +3,7 @@ import type { Page } from '@playwright/test';
 import { addDays, instantAt } from '@strikeboard/domain/zone';
 import { BoardApi, todayAt } from './board-api.ts';
 import { BoardPage } from './board-page.ts';
-import { accounts, companies, expect, fromStack, test } from './fixtures.ts';
+import { accounts, companies, expect, test } from './fixtures.ts';
 import { textsTo } from './inbox.ts';
 
 // Rules are those of axe-core 4.13, which name the success criteria of WCAG 2.2 behind each.
@@ -23,29 +23,56 @@ async function violationsOf(page: Page, within?: string): Promise<string[]> {
   );
 }
 
-/** Looks a page over in each theme, as the cookie of the theme switch sets it. */
+/** Opens a page and looks it over in each theme. */
 async function lookOver(
   page: Page,
   name: string,
   open: () => Promise<void>,
   { within, by = themes }: { within?: string; by?: readonly (typeof themes)[number][] } = {},
 ): Promise<void> {
+  await open();
   for (const theme of by) {
     await test.step(`${name}, ${theme}`, async () => {
-      await page.context().addCookies([{ name: 'theme', value: theme, url: fromStack('E2E_WEB_URL') }]);
-      await open();
-      await expect(page.locator('html')).toHaveAttribute('data-theme', theme);
+      await wear(page, theme);
       expect(await violationsOf(page, within), `${name}, ${theme}`).toEqual([]);
-      const overflow = await page.evaluate(
-        () => document.documentElement.scrollWidth - document.documentElement.clientWidth,
-      );
-      expect(overflow, `${name}, ${theme}: pixels past the right edge`).toBeLessThanOrEqual(0);
     });
   }
+  const overflow = await page.evaluate(
+    () => document.documentElement.scrollWidth - document.documentElement.clientWidth,
+  );
+  expect(overflow, `${name}: pixels past the right edge`).toBeLessThanOrEqual(0);
+}
+
+/** Sets the theme as the switch on the page does, and waits until colours have stopped changing. */
+async function wear(page: Page, theme: string): Promise<void> {
+  await page.evaluate(async (chosen) => {
+    document.documentElement.dataset.theme = chosen;
+    const changing = document.getAnimations().filter((one) => one instanceof CSSTransition);
+    await Promise.allSettled(changing.map(({ finished }) => finished));
+  }, theme);
 }
 
 const heading = (page: Page, name: string | RegExp) =>
   expect(page.getByRole('heading', { name, level: 1 })).toBeVisible();
+
+test('a theme is chosen once, and comes with every page after that', async ({ page }) => {
+  const shown = page.locator('html');
+  for (const [theme, label] of [
+    ['light', 'Light'],
+    ['dark', 'Dark'],
+    ['sunlight', 'Sunlight'],
+  ] as const) {
+    await page.goto('/sign-in');
+    await page.getByLabel('Colours').selectOption(label);
+    await expect(shown).toHaveAttribute('data-theme', theme);
+    await page.reload();
+    await expect(shown).toHaveAttribute('data-theme', theme);
+    await expect(page.getByLabel('Colours')).toHaveValue(theme);
+  }
+  await page.getByLabel('Colours').selectOption('As the device');
+  await page.reload();
+  await expect(shown).not.toHaveAttribute('data-theme');
+});
 
 test('signing in', async ({ page, allowOnConsole }) => {
   allowOnConsole(/status of 401/);

@@ -28,7 +28,6 @@ import {
 } from './visit-changes.ts';
 import { callOffVisits, type KeptRows, keepRows, releaseRows, restoreRows } from './visit-rows.ts';
 
-
 const NEAREST_SHOWN = 3;
 
 /**
