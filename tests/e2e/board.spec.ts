@@ -89,7 +89,7 @@ test('two dispatchers see each other, and a stale card is refused', async ({
     const changed = danas.page.waitForResponse((answer) => answer.url().endsWith('/place'));
     await danas.page.keyboard.press('Space');
     await changed;
-    await expect(marisols.card(marisols.lane(first.name), label)).toBeVisible({ timeout: 1_000 });
+    await expect(marisols.card(marisols.lane(first.name), label)).toBeVisible();
     await expect(marisols.card(marisols.waiting, label)).toHaveCount(0);
   });
 

@@ -209,7 +209,7 @@ test('from a messy spreadsheet to a yes on the board', async ({ page, signIn, op
   });
 
   await test.step('the board shows the answer without a reload', async () => {
-    await expect(placed).toHaveAccessibleName(/, 1 of \d+ said yes/, { timeout: 1_500 });
+    await expect(placed).toHaveAccessibleName(/, 1 of \d+ said yes/);
   });
 
   await test.step('the notices list the words as they were sent', async () => {
