@@ -95,7 +95,7 @@ test('from a messy spreadsheet to a yes on the board', async ({ page, signIn, op
     await expect(forecast).toContainText('0 pours will be added, 2 are here already');
     await page.getByRole('button', { name: 'Accept all' }).click();
     await expect(page.getByRole('heading', { name: '0 pours added' })).toBeVisible();
-    await expect(page.getByText('2 were here already')).toBeVisible();
+    await expect(page.getByText('2 here already, left as they are.')).toBeVisible();
     const after = await api.read(day, 1);
     expect(after.visits.length).toBe(before.visits.length);
   });
