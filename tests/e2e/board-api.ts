@@ -129,10 +129,10 @@ export class BoardApi {
     for (let ahead = 0; ahead < of.days; ahead += 1) {
       const day = addDays(of.from, ahead);
       if (weekdayOf(day) > 5) continue;
-      // Half a day around it, so that no rest between shifts is too short.
+      // The evening before and the small hours after it too, so that no rest between shifts is too short.
       const around = {
-        startMs: instantAt(addDays(day, -1), 720, zone),
-        endMs: instantAt(addDays(day, 1), 720, zone),
+        startMs: instantAt(addDays(day, -1), 20 * 60, zone),
+        endMs: instantAt(addDays(day, 1), 3 * 60, zone),
       };
       for (const crew of snapshot.crews) {
         const taken = snapshot.visits.some(
